@@ -1,0 +1,3 @@
+//! The program `homocline`.
+
+fn main() {}
