@@ -1,3 +1,7 @@
 //! The program `homocline`.
 
-fn main() {}
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    homocline::cli::main()
+}

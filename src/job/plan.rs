@@ -1,0 +1,289 @@
+//! The plan: an area file checked against what the job needs, with every path resolved.
+
+use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, OneOrMany, StationsSection, StructureName};
+use super::paths::Located;
+use super::{AreaFileError, JobError};
+use crate::domain::SameName;
+use crate::input::{ColumnSpec, DeclinationSpec, Notation, NorthSpec, StationSpec, StructureSpec};
+use crate::station::Kind;
+use std::collections::BTreeMap;
+use std::path::{Path, PathBuf};
+
+/// What the command line says over the area file; its paths are relative to the working folder.
+#[derive(Debug, Clone, Default)]
+pub struct Overrides {
+    /// Station files instead of the area file's.
+    pub stations: Vec<String>,
+    /// Domain polygons.
+    pub polygons: Option<String>,
+    /// Fault lines.
+    pub faults: Option<String>,
+    /// Grow the domains from the readings.
+    pub clusters: bool,
+    /// Output folder.
+    pub out: Option<PathBuf>,
+    /// Seed.
+    pub seed: Option<u64>,
+}
+
+/// How the domains are to be made.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) enum DomainPlan {
+    /// One for the whole area.
+    Single,
+    /// The user's polygons.
+    Polygons {
+        source: Located,
+        name: Option<String>,
+        same_name: SameName,
+        /// Metres.
+        nearest: f64,
+    },
+}
+
+/// A job that can be run. Exists only after everything that can be checked without reading data was.
+#[derive(Debug, Clone)]
+pub struct Plan {
+    pub(super) title: String,
+    pub(super) seed: u64,
+    pub(super) crs: Option<String>,
+    pub(super) sources: Vec<(Located, StationSpec)>,
+    pub(super) domains: DomainPlan,
+    pub(super) outline: Option<Located>,
+    pub(super) confidence: f64,
+    pub(super) folder: PathBuf,
+    /// The options as used, for the record.
+    pub(super) options: AreaFile,
+    /// The area file as typed, for the record.
+    pub(super) text: Option<String>,
+}
+
+/// Reads the area file, if any, applies what the command line says, and checks the whole.
+pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError> {
+    let (mut options, base, label, text) = match area {
+        Some(path) => {
+            let (options, text) = AreaFile::read(path)?;
+            let base = path.parent().unwrap_or(Path::new("")).to_owned();
+            (options, base, path.display().to_string(), Some(text))
+        }
+        None if overrides.stations.is_empty() => return Err(JobError::NothingToDo),
+        None => (AreaFile::default(), PathBuf::new(), "the command line".to_owned(), None),
+    };
+    let here = Path::new("");
+    let from_command_line = !overrides.stations.is_empty();
+    if from_command_line {
+        let section = |file: &String| StationsSection { file: file.clone(), ..StationsSection::default() };
+        options.stations = OneOrMany::Many(overrides.stations.iter().map(section).collect());
+    }
+    let mut polygons_base = base.as_path();
+    if let Some(polygons) = &overrides.polygons {
+        options.domains.polygons = Some(polygons.clone());
+        polygons_base = here;
+    }
+    if let Some(faults) = &overrides.faults {
+        options.domains.faults = Some(faults.clone());
+    }
+    if overrides.clusters {
+        options.domains.method = Some("clusters".into());
+    }
+    if let Some(seed) = overrides.seed {
+        options.area.seed = seed;
+    }
+    let check = Checker { file: &label };
+    check.ranges(&options)?;
+    check.not_yet(&options)?;
+    let sources = check.sources(&options, if from_command_line { here } else { &base })?;
+    let domains = check.domains(&mut options, polygons_base)?;
+    let folder = overrides.out.clone().unwrap_or_else(|| base.join(&options.output.folder));
+    let title = options.area.name.clone().unwrap_or_else(|| {
+        area.and_then(Path::file_stem).map_or_else(|| "area".into(), |stem| stem.to_string_lossy().into_owned())
+    });
+    Ok(Plan {
+        title,
+        seed: options.area.seed,
+        crs: options.area.crs.clone(),
+        sources,
+        domains,
+        outline: options.domains.outline.as_deref().map(|o| Located::new(o, &base)),
+        confidence: options.fabric.confidence,
+        folder,
+        options,
+        text,
+    })
+}
+
+struct Checker<'a> {
+    file: &'a str,
+}
+
+impl Checker<'_> {
+    fn value(&self, key: &str, value: impl ToString, message: impl Into<String>) -> JobError {
+        AreaFileError::value(self.file, key, value, message).into()
+    }
+
+    fn one_of(&self, key: &str, value: &str, known: &[&str]) -> Result<(), JobError> {
+        if known.contains(&value) { Ok(()) } else { Err(self.value(key, format!("\"{value}\""), choices(value, known))) }
+    }
+
+    fn ranges(&self, options: &AreaFile) -> Result<(), JobError> {
+        let within = |key: &str, value: f64, low: f64, high: f64| {
+            let fits = value.is_finite() && (low..=high).contains(&value);
+            if fits { Ok(()) } else { Err(self.value(key, value, format!("must lie between {low} and {high}"))) }
+        };
+        within("fabric.confidence", options.fabric.confidence, 0.5, 0.999)?;
+        within("fabric.max_weight", options.fabric.max_weight, 1.0, 1e6)?;
+        within("compare.level", options.compare.level, 0.0, 1.0)?;
+        within("domains.nearest_m", options.domains.nearest_m, 0.0, 1e9)?;
+        within("symbols.scale", options.symbols.scale, 1.0, 1e9)?;
+        within("symbols.spacing_mm", options.symbols.spacing_mm, 0.0, 1000.0)?;
+        let exposures = ["none", "map", "scanline", "plane", "column"];
+        self.one_of("fabric.terzaghi", &options.fabric.terzaghi, &exposures)?;
+        for format in &options.output.formats {
+            self.one_of("output.formats", format, &["gpkg"])?;
+        }
+        Ok(())
+    }
+
+    /// What the area file may ask for one day and this version cannot do: an error beats a silent omission.
+    fn not_yet(&self, options: &AreaFile) -> Result<(), JobError> {
+        let cannot = |key: &str, value: &str| Err(self.value(key, format!("\"{value}\""), "this version cannot do that yet"));
+        if options.fabric.terzaghi != "none" {
+            return cannot("fabric.terzaghi", &options.fabric.terzaghi);
+        }
+        if let Some(structure) = options.fabric.directed.first() {
+            return cannot("fabric.directed", structure);
+        }
+        match options.domains.method.as_deref() {
+            Some(method @ ("clusters" | "fault-blocks")) => cannot("domains.method", method),
+            _ => Ok(()),
+        }
+    }
+
+    fn domains(&self, options: &mut AreaFile, base: &Path) -> Result<DomainPlan, JobError> {
+        let section = &mut options.domains;
+        let default = if section.polygons.is_some() { "polygons" } else { "single" };
+        let method = section.method.get_or_insert_with(|| default.into()).clone();
+        self.one_of("domains.method", &method, &["polygons", "fault-blocks", "clusters", "single"])?;
+        self.one_of("domains.same_name", &section.same_name, &["refuse", "merge"])?;
+        if method == "single" {
+            return Ok(DomainPlan::Single);
+        }
+        let Some(polygons) = &section.polygons else {
+            let message = "domains.method is \"polygons\" but domains.polygons names no file".to_owned();
+            return Err(AreaFileError::Missing { file: self.file.to_owned(), message }.into());
+        };
+        Ok(DomainPlan::Polygons {
+            source: Located::new(polygons, base),
+            name: section.name.clone(),
+            same_name: if section.same_name == "merge" { SameName::Merge } else { SameName::Refuse },
+            nearest: section.nearest_m,
+        })
+    }
+
+    fn sources(&self, options: &AreaFile, base: &Path) -> Result<Vec<(Located, StationSpec)>, JobError> {
+        let mut sources = Vec::new();
+        let structures = self.structures(options)?;
+        for section in options.stations.iter() {
+            if section.file.is_empty() {
+                let message = "a [stations] table names no file; set stations.file".to_owned();
+                return Err(AreaFileError::Missing { file: self.file.to_owned(), message }.into());
+            }
+            let mut source = Located::new(&section.file, base);
+            source.layer = section.layer.clone().or(source.layer);
+            let spec = self.spec(section, &source.named, &structures)?;
+            sources.push((source, spec));
+        }
+        if sources.is_empty() {
+            let message = "names no stations; add a [stations] table with file = \"…\"".to_owned();
+            return Err(AreaFileError::Missing { file: self.file.to_owned(), message }.into());
+        }
+        Ok(sources)
+    }
+
+    fn structures(&self, options: &AreaFile) -> Result<StructureSpec, JobError> {
+        let mut names = BTreeMap::new();
+        let mut kinds = BTreeMap::new();
+        for (spelling, meaning) in &options.structures {
+            match meaning {
+                StructureName::Name(name) => {
+                    names.insert(spelling.clone(), name.clone());
+                }
+                StructureName::Own { name, kind } => {
+                    self.one_of(&format!("structures.{spelling}.kind"), kind, &["planar", "linear"])?;
+                    names.insert(spelling.clone(), name.clone());
+                    kinds.insert(name.clone(), if kind == "planar" { Kind::Planar } else { Kind::Linear });
+                }
+            }
+        }
+        Ok(StructureSpec { names, kinds })
+    }
+
+    fn spec(&self, section: &StationsSection, named: &str, structures: &StructureSpec) -> Result<StationSpec, JobError> {
+        let north = match section.north.as_deref() {
+            None => None,
+            Some("true") => Some(NorthSpec::True),
+            Some("grid") => Some(NorthSpec::Grid),
+            Some("magnetic") => Some(NorthSpec::Magnetic),
+            Some(other) => {
+                let message = choices(other, &["true", "grid", "magnetic"]);
+                return Err(self.value("stations.north", format!("\"{other}\""), message));
+            }
+        };
+        let declination = match &section.declination {
+            None => section.columns.declination.clone().map(DeclinationSpec::Column),
+            Some(NumberOrText::Number(degrees)) if degrees.is_finite() && degrees.abs() <= 180.0 => {
+                Some(DeclinationSpec::Constant(*degrees))
+            }
+            Some(NumberOrText::Number(degrees)) => {
+                return Err(self.value("stations.declination", degrees, "must lie between -180 and 180 degrees"));
+            }
+            Some(NumberOrText::Text(text)) if text == "model" => Some(DeclinationSpec::Model),
+            Some(NumberOrText::Text(column)) => Some(DeclinationSpec::Column(column.clone())),
+        };
+        let notation = match section.notation.as_deref() {
+            None => Notation::Auto,
+            Some(word) => Notation::from_word(word)
+                .ok_or_else(|| self.value("stations.notation", format!("\"{word}\""), choices(word, &Notation::WORDS)))?,
+        };
+        let columns = &section.columns;
+        Ok(StationSpec {
+            source: named.to_owned(),
+            crs: section.crs.clone(),
+            north,
+            declination,
+            date: section.date.as_ref().map(|d| d.text()),
+            notation,
+            columns: ColumnSpec {
+                id: columns.id.clone(),
+                x: columns.x.clone(),
+                y: columns.y.clone(),
+                z: columns.z.clone(),
+                date: columns.date.clone(),
+                structure: columns.structure.as_ref().map(|s| match s {
+                    ColumnOrValue::Column(column) => crate::input::ColumnOrValue::Column(column.clone()),
+                    ColumnOrValue::Value { value } => crate::input::ColumnOrValue::Value(value.clone()),
+                }),
+                azimuth: columns.azimuth.clone(),
+                dip: columns.dip.clone(),
+                dip_quadrant: columns.dip_quadrant.clone(),
+                attitude: columns.attitude.clone(),
+                rake: columns.rake.clone(),
+                polarity: columns.polarity.clone(),
+                weight: columns.weight.clone(),
+                ..ColumnSpec::default()
+            },
+            structures: structures.clone(),
+        })
+    }
+}
+
+/// "one of a, b, c; did you mean b?"
+fn choices(value: &str, known: &[&str]) -> String {
+    let nearest = known
+        .iter()
+        .map(|k| (strsim::jaro_winkler(k, value), k))
+        .filter(|(likeness, _)| *likeness > 0.7)
+        .max_by(|a, b| a.0.total_cmp(&b.0));
+    let meant = nearest.map(|(_, k)| format!("; did you mean \"{k}\"?")).unwrap_or_default();
+    format!("must be one of {}{meant}", known.join(", "))
+}
