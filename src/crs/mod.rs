@@ -9,12 +9,18 @@ mod definition;
 mod error;
 mod ffi;
 mod magnetic;
+mod map_choice;
 mod north;
+mod orient;
 mod pool;
+mod source;
+mod tally;
 mod transform;
 
 pub use area::AreaOfUse;
 pub use definition::MapCrs;
 pub use error::CrsError;
+pub use map_choice::default_map_crs;
 pub use north::LocalNorth;
+pub use orient::{Oriented, orient};
 pub use transform::Transformer;

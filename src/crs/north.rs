@@ -72,6 +72,16 @@ impl MapCrs {
         }
     }
 
+    /// Longitude and latitude from Greenwich, degrees on the CRS's own datum, on this thread; not finite where
+    /// there is none.
+    pub(super) fn geographic_chunk(&self, places: &[Coord<f64>]) -> Vec<Coord<f64>> {
+        let mut geographic = places.to_vec();
+        if let Some(grid) = self.grid() {
+            grid.projection.with(|operation| operation.inverse(&mut geographic));
+        }
+        geographic.into_iter().map(|c| self.greenwich(c)).collect()
+    }
+
     fn without_grid(&self, at: Coord<f64>) -> Option<LocalNorth> {
         let usable = at.x.is_finite() && at.y.is_finite();
         usable.then(|| LocalNorth { convergence: 0.0, place: self.greenwich(at), steps: None })
@@ -116,7 +126,7 @@ impl MapCrs {
                 let steps = (!grid.conformal && from_pole > STEP).then(|| {
                     let east = unfolded(ends[2 * n + i], places[i], ends[3 * n + i]);
                     // The steps are equal in angle; on the ground a step north is M and one east N cos(latitude)
-                    // long (Snyder, PP 1395, eqs 4-18 and 4-20), so only their ratio matters.
+                    // long (Snyder, PP 1395, chapter 4), so only their ratio matters.
                     let e2 = self.base().eccentricity_squared;
                     let meridian = (1.0 - e2) / (1.0 - e2 * latitude.sin().powi(2));
                     let parallel = latitude.cos();
@@ -139,5 +149,21 @@ fn unfolded(east: Coord<f64>, here: Coord<f64>, west: Coord<f64>) -> Coord<f64> 
         ahead * 2.0
     } else {
         east - west
+    }
+}
+
+impl MapCrs {
+    /// The most that a map drawn with degrees as x and y turns any line at a latitude, in degrees; `None`
+    /// where no finite latitude is given. Such a map stretches by k along the parallel, and a line is turned
+    /// most by asin((k - 1) / (k + 1)) (Tissot's indicatrix; Snyder, PP 1395, chapter 4).
+    pub fn largest_plate_carree_turn(&self, latitude: f64) -> Option<f64> {
+        if !latitude.is_finite() {
+            return None;
+        }
+        let (sin, cos) = latitude.to_radians().sin_cos();
+        let e2 = self.base().eccentricity_squared;
+        let stretch = (1.0 - e2) / (1.0 - e2 * sin * sin) / cos.max(f64::MIN_POSITIVE);
+        let (long, short) = (stretch.max(1.0), stretch.min(1.0));
+        Some(((long - short) / (long + short)).asin().to_degrees())
     }
 }
