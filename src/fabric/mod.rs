@@ -1,1 +1,24 @@
-//! (being built)
+//! Every statistic of one sample of axes: [`summarise`] answers for poles and unsensed lines.
+//!
+//! Invariants: no file here knows a map, a file or a layer. Angles cross the border in degrees. Sums are
+//! exact, so a result does not depend on the order of readings; the sense of an axis changes nothing. Too few
+//! readings are an answer (`None` and a note), never NaN. The station, not the reading, is the unit of tests
+//! and cones: readings at one station are no independent witnesses.
+
+pub mod axis_cone;
+pub mod fisher;
+pub mod girdle_arc;
+pub mod harmonics;
+pub mod modes;
+pub mod ratios;
+mod registry;
+mod sample;
+mod shape;
+mod summary;
+pub mod uniformity;
+
+pub use axis_cone::{Cone, NoCone};
+pub use registry::{ALL, Statistic};
+pub use sample::{Kind, Sample, SampleError, Stations, Unit, units};
+pub use shape::{LEAST_ARC, Shape};
+pub use summary::{Fabric, FabricOptions, LEAST, TRUSTED, summarise};

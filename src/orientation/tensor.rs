@@ -77,6 +77,11 @@ impl OrientationTensor {
         if squares > 0.0 { self.weight.value().powi(2) / squares } else { 0.0 }
     }
 
+    /// The unnormalised sums: ee, en, eu, nn, nu, uu.
+    pub fn moments(&self) -> [f64; 6] {
+        self.sums.map(ExactSum::value)
+    }
+
     /// The tensor with trace 1 (Scheidegger 1965; Watson 1966), frame east-north-up; `None` when empty.
     pub fn normalised(&self) -> Option<Matrix3<f64>> {
         let [ee, en, eu, nn, nu, uu] = self.sums.map(ExactSum::value);
