@@ -4,7 +4,12 @@ use super::args::RunArgs;
 use super::messages::{Printer, is_finding};
 use super::progress::progress;
 use super::{DONE, FINDINGS, STOPPED};
-use crate::job::{self, Outcome, Overrides};
+use crate::job::{self, FabricLine, Outcome, Overrides};
+use crate::orientation::Plane;
+use crate::station::Kind;
+
+/// How many fabrics `run` prints; the rest are in the layer.
+const FABRICS_SHOWN: usize = 40;
 
 /// What the command line says over the area file.
 pub(super) fn overrides(args: &RunArgs) -> Overrides {
@@ -44,8 +49,11 @@ fn print_outcome(outcome: &Outcome, printer: &Printer) {
     for (code, n) in &counts.refused_by_code {
         printer.line(&format!("  refused: {n} × {code}"));
     }
-    for line in &outcome.fabric_lines {
-        printer.line(line);
+    for line in outcome.fabrics.iter().take(FABRICS_SHOWN) {
+        printer.line(&fabric_line(line));
+    }
+    if outcome.fabrics.len() > FABRICS_SHOWN {
+        printer.line(&format!("… and {} more fabrics in the fabrics layer", outcome.fabrics.len() - FABRICS_SHOWN));
     }
     for path in &outcome.written {
         printer.line(&format!("wrote {}", path.display()));
@@ -55,4 +63,29 @@ fn print_outcome(outcome: &Outcome, printer: &Printer) {
         "counts": counts,
         "written": outcome.written.iter().map(|p| p.display().to_string()).collect::<Vec<_>>(),
     }));
+}
+
+/// "North block · bedding: n 84, cluster, mean plane 043/31 SE, cone 5.1° × 3.2°".
+fn fabric_line(line: &FabricLine) -> String {
+    let fabric = &line.placed.fabric;
+    let mut parts = vec![format!("n {}", fabric.n), fabric.shape.word().replace('_', " ")];
+    match (fabric.mean, line.placed.structure.kind) {
+        (Some(axis), Kind::Planar) => {
+            let plane = Plane::from_pole(axis);
+            let strike = plane.strike.map_or(0.0, |s| s.degrees().round() % 360.0);
+            parts.push(format!("mean plane {strike:03.0}/{:02.0} (right-hand strike/dip)", plane.dip.degrees()));
+        }
+        (Some(axis), Kind::Linear) => {
+            parts.push(format!("mean line {:03.0}/{:02.0} (trend/plunge)", axis.trend().round() % 360.0, axis.plunge()));
+        }
+        (None, _) => {}
+    }
+    if let (Some(_), Some(cone)) = (fabric.mean, fabric.mean_cone) {
+        parts.push(format!("cone of the mean {:.1}° × {:.1}°", cone.major, cone.minor));
+    }
+    if let Some(eigen) = fabric.eigen {
+        let [s1, s2, s3] = eigen.values;
+        parts.push(format!("S {s1:.3} {s2:.3} {s3:.3}"));
+    }
+    format!("{} · {}: {}", line.domain, line.placed.structure.name, parts.join(", "))
 }

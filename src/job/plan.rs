@@ -4,7 +4,8 @@ use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, OneOrMany, Station
 use super::paths::Located;
 use super::{AreaFileError, JobError};
 use crate::domain::SameName;
-use crate::input::{ColumnSpec, DeclinationSpec, Notation, NorthSpec, StationSpec, StructureSpec};
+use crate::input::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
+use crate::orientation::notation::Notation;
 use crate::station::Kind;
 use std::collections::BTreeMap;
 use std::path::{Path, PathBuf};
@@ -112,6 +113,11 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
     })
 }
 
+/// Source spelling to structure.
+type Spellings = BTreeMap<String, String>;
+/// Kinds of the user's own structures.
+type Kinds = BTreeMap<String, Kind>;
+
 struct Checker<'a> {
     file: &'a str,
 }
@@ -182,7 +188,7 @@ impl Checker<'_> {
 
     fn sources(&self, options: &AreaFile, base: &Path) -> Result<Vec<(Located, StationSpec)>, JobError> {
         let mut sources = Vec::new();
-        let structures = self.structures(options)?;
+        let (structures, kinds) = self.structures(options)?;
         for section in options.stations.iter() {
             if section.file.is_empty() {
                 let message = "a [stations] table names no file; set stations.file".to_owned();
@@ -190,7 +196,11 @@ impl Checker<'_> {
             }
             let mut source = Located::new(&section.file, base);
             source.layer = section.layer.clone().or(source.layer);
-            let spec = self.spec(section, &source.named, &structures)?;
+            let spec = StationSpec {
+                structures: structures.clone(),
+                kinds: kinds.clone(),
+                ..self.spec(section, &source.named)?
+            };
             sources.push((source, spec));
         }
         if sources.is_empty() {
@@ -200,7 +210,7 @@ impl Checker<'_> {
         Ok(sources)
     }
 
-    fn structures(&self, options: &AreaFile) -> Result<StructureSpec, JobError> {
+    fn structures(&self, options: &AreaFile) -> Result<(Spellings, Kinds), JobError> {
         let mut names = BTreeMap::new();
         let mut kinds = BTreeMap::new();
         for (spelling, meaning) in &options.structures {
@@ -215,15 +225,15 @@ impl Checker<'_> {
                 }
             }
         }
-        Ok(StructureSpec { names, kinds })
+        Ok((names, kinds))
     }
 
-    fn spec(&self, section: &StationsSection, named: &str, structures: &StructureSpec) -> Result<StationSpec, JobError> {
+    fn spec(&self, section: &StationsSection, named: &str) -> Result<StationSpec, JobError> {
         let north = match section.north.as_deref() {
             None => None,
-            Some("true") => Some(NorthSpec::True),
-            Some("grid") => Some(NorthSpec::Grid),
-            Some("magnetic") => Some(NorthSpec::Magnetic),
+            Some("true") => Some(NorthReference::True),
+            Some("grid") => Some(NorthReference::Grid),
+            Some("magnetic") => Some(NorthReference::Magnetic),
             Some(other) => {
                 let message = choices(other, &["true", "grid", "magnetic"]);
                 return Err(self.value("stations.north", format!("\"{other}\""), message));
@@ -247,7 +257,7 @@ impl Checker<'_> {
         };
         let columns = &section.columns;
         Ok(StationSpec {
-            source: named.to_owned(),
+            file: named.to_owned(),
             crs: section.crs.clone(),
             north,
             declination,
@@ -260,8 +270,8 @@ impl Checker<'_> {
                 z: columns.z.clone(),
                 date: columns.date.clone(),
                 structure: columns.structure.as_ref().map(|s| match s {
-                    ColumnOrValue::Column(column) => crate::input::ColumnOrValue::Column(column.clone()),
-                    ColumnOrValue::Value { value } => crate::input::ColumnOrValue::Value(value.clone()),
+                    ColumnOrValue::Column(column) => StructureSpec::Column(column.clone()),
+                    ColumnOrValue::Value { value } => StructureSpec::Value(value.clone()),
                 }),
                 azimuth: columns.azimuth.clone(),
                 dip: columns.dip.clone(),
@@ -270,9 +280,10 @@ impl Checker<'_> {
                 rake: columns.rake.clone(),
                 polarity: columns.polarity.clone(),
                 weight: columns.weight.clone(),
+                declination: columns.declination.clone(),
                 ..ColumnSpec::default()
             },
-            structures: structures.clone(),
+            ..StationSpec::default()
         })
     }
 }

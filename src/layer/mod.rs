@@ -6,6 +6,8 @@ mod fabrics;
 mod orientations;
 mod refusals;
 
+pub use fabrics::symbol_azimuth;
+
 use crate::domain::Domains;
 use crate::fabric::Fabric;
 use crate::notice::Refusal;

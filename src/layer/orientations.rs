@@ -74,7 +74,7 @@ fn deviations(results: &Results) -> Column {
     let mut means = vec![None; results.domains.list.len() * structures];
     for placed in results.fabrics {
         if let Some(s) = readings.structures.iter().position(|s| *s == placed.structure) {
-            means[placed.domain * structures + s] = placed.fabric.mean_axis();
+            means[placed.domain * structures + s] = placed.fabric.mean;
         }
     }
     (0..readings.len())

@@ -1,0 +1,189 @@
+//! The run: gather, summarise, make the layers, write them.
+
+use super::error::JobError;
+use super::gather::{Gathered, gather};
+use super::grouping::{groups, stations};
+use super::outputs::Staging;
+use super::plan::{DomainPlan, Plan};
+use super::summary::{AllCounts, RunRecord, Summary};
+use super::{message_of, provenance};
+use crate::fabric::{self, FabricOptions, Sample};
+use crate::format::gpkg::{self, GeometryKind, LayerToWrite, Metadata, Package, Style};
+use crate::layer::{self, PlacedFabric, Results};
+use crate::notice::{Notice, Progress, Refusal};
+use crate::orientation::TrueAzimuth;
+use crate::style;
+use geo::{Coord, InteriorPoint};
+use rayon::prelude::*;
+use std::path::PathBuf;
+
+/// What a run did.
+pub struct Outcome {
+    /// How many rows were read, kept and refused.
+    pub counts: AllCounts,
+    /// What is worth saying.
+    pub notices: Vec<Notice>,
+    /// The rows that were not used.
+    pub refusals: Vec<Refusal>,
+    /// The fabrics, for printing.
+    pub fabrics: Vec<FabricLine>,
+    /// The files written.
+    pub written: Vec<PathBuf>,
+}
+
+/// One fabric, ready for a line of text.
+pub struct FabricLine {
+    /// Name of the domain.
+    pub domain: String,
+    /// The statistics, with their structure.
+    pub placed: PlacedFabric,
+}
+
+/// Time stamp of the GeoPackage's contents: fixed, so that the same input writes the same bytes.
+const NO_TIME: &str = "1970-01-01T00:00:00.000Z";
+/// Files written besides the styles.
+const TARGETS: [&str; 2] = ["area.gpkg", "summary.json"];
+
+/// Does the whole job.
+pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
+    let style_files = style::files();
+    let mut targets = TARGETS.to_vec();
+    let style_names: Vec<String> = style_files.iter().map(|(name, _)| format!("styles/{name}")).collect();
+    targets.extend(style_names.iter().map(String::as_str));
+    let mut staging = Staging::prepare(&plan.folder, &targets, &inputs(plan))?;
+
+    let mut gathered = gather(plan, progress)?;
+    let fabrics = summarise(plan, &mut gathered, progress);
+    let Gathered { map, readings, tables, domains, refusals, notices, counts } = gathered;
+    let results = Results {
+        readings: &readings,
+        sources: &tables,
+        domains: &domains,
+        fabrics: &fabrics,
+        refusals: &refusals,
+        crs: map.code_or_wkt(),
+        geographic: !map.is_projected(),
+        metres: map.unit_in_metres().unwrap_or(1.0),
+    };
+    progress.begin("making layers", None);
+    let layers: Vec<_> = layer::ALL.iter().map(|layer| (layer.table)(&results)).collect();
+    progress.end();
+    drop(tables);
+
+    let record = record(plan, map.code_or_wkt(), &counts, &notices)?;
+    let package = Package {
+        crs: map.code_or_wkt().to_owned(),
+        layers: layer::ALL.iter().zip(&layers).map(|(layer, table)| to_write(layer, table)).collect(),
+        metadata: metadata(plan, &record),
+        styles: style::embedded().into_iter().map(embedded_style).collect(),
+        last_change: NO_TIME.to_owned(),
+    };
+    gpkg::write(&staging.path("area.gpkg")?, &package, progress)?;
+    staging.write("summary.json", |file| {
+        serde_json::to_writer(&mut *file, &Summary { run: &record, layers: &layers })?;
+        file.write_all(b"\n")
+    })?;
+    for ((_, text), name) in style_files.iter().zip(&style_names) {
+        staging.write(name, |file| file.write_all(text.as_bytes()))?;
+    }
+    let written = staging.commit()?;
+    let line = |placed: PlacedFabric| FabricLine { domain: domains.list[placed.domain].name.clone(), placed };
+    Ok(Outcome { counts, notices, refusals, fabrics: fabrics.into_iter().map(line).collect(), written })
+}
+
+/// Every file that the run reads, which no output may replace.
+fn inputs(plan: &Plan) -> Vec<PathBuf> {
+    sources(plan).into_iter().flat_map(|(source, _)| provenance::files_of(&source.location)).collect()
+}
+
+fn sources(plan: &Plan) -> Vec<(&super::paths::Located, &'static str)> {
+    let mut sources: Vec<_> = plan.sources.iter().map(|(source, _)| (source, "stations")).collect();
+    if let DomainPlan::Polygons { source, .. } = &plan.domains {
+        sources.push((source, "polygons"));
+    }
+    sources.extend(plan.outline.iter().map(|outline| (outline, "outline")));
+    sources
+}
+
+fn summarise(plan: &Plan, gathered: &mut Gathered, progress: &dyn Progress) -> Vec<PlacedFabric> {
+    let (readings, domains, map) = (&gathered.readings, &gathered.domains, &gathered.map);
+    let (stations, notice) = stations(readings);
+    gathered.notices.extend(notice);
+    let groups = groups(readings, domains, &stations);
+    progress.begin("summarising fabrics", Some(groups.len() as u64));
+    let mut inside: Vec<Option<Coord<f64>>> =
+        domains.list.iter().map(|d| d.shape.interior_point().map(Coord::from)).collect();
+    if inside.len() == 1 && inside[0].is_none() {
+        // Stations on a line or at a point span no area; the fabric then stands at the first of them.
+        inside[0] = readings.position.iter().copied().min_by(|a, b| a.x.total_cmp(&b.x).then(a.y.total_cmp(&b.y)));
+    }
+    let fabrics = groups
+        .into_par_iter()
+        .map(|group| {
+            let structure = readings.structures[group.structure].clone();
+            let sample = Sample::new(&group.axes, structure.kind)
+                .weighted(&group.weights)
+                .and_then(|s| s.at_stations(&group.stations))
+                .expect("weights were checked when they were read, and the columns are of one length");
+            let options = FabricOptions { confidence: plan.confidence, folded: is_folded(&structure.name) };
+            let at = inside[group.domain].unwrap_or(Coord { x: f64::NAN, y: f64::NAN });
+            let fabric = fabric::summarise(&sample, &options);
+            let mut placed = PlacedFabric { domain: group.domain, structure, fabric, at, grid_azimuth: None };
+            let azimuth = layer::symbol_azimuth(&placed).and_then(|a| TrueAzimuth::new(a).ok());
+            placed.grid_azimuth = azimuth.and_then(|a| map.grid_azimuth(at, a));
+            progress.advance(1);
+            placed
+        })
+        .collect();
+    progress.end();
+    fabrics
+}
+
+/// Structures whose poles spread along a girdle by folding; two maxima of joints are two sets instead.
+fn is_folded(structure: &str) -> bool {
+    !matches!(structure, "joint" | "fault" | "vein" | "dike")
+}
+
+fn record(plan: &Plan, crs: &str, counts: &AllCounts, notices: &[Notice]) -> Result<RunRecord, JobError> {
+    let mut inputs = Vec::new();
+    for (source, role) in sources(plan) {
+        let hashed = provenance::record(&source.named, &source.location, role);
+        inputs.extend(hashed.map_err(|cause| JobError::Unreadable { file: source.named.clone(), cause })?);
+    }
+    Ok(RunRecord {
+        version: env!("CARGO_PKG_VERSION"),
+        name: plan.title.clone(),
+        seed: plan.seed,
+        crs: crs.to_owned(),
+        inputs,
+        options: serde_json::to_value(&plan.options).unwrap_or_default(),
+        counts: counts.clone(),
+        messages: notices.iter().map(message_of).collect(),
+    })
+}
+
+/// The record of the run, and the area file as typed, inside the GeoPackage.
+fn metadata(plan: &Plan, record: &RunRecord) -> Vec<Metadata> {
+    let json = serde_json::to_string(record).unwrap_or_default();
+    let mut list = vec![Metadata { mime_type: "application/json".into(), text: json }];
+    list.extend(plan.text.clone().map(|text| Metadata { mime_type: "application/toml".into(), text }));
+    list
+}
+
+fn to_write<'a>(layer: &layer::Layer, table: &'a crate::table::Table) -> LayerToWrite<'a> {
+    LayerToWrite {
+        table,
+        geometry: match layer.geometry {
+            layer::Geometry::Point => GeometryKind::Point,
+            layer::Geometry::MultiPolygon => GeometryKind::MultiPolygon,
+            layer::Geometry::None => GeometryKind::None,
+        },
+        title: layer.title.to_owned(),
+        description: layer.description.to_owned(),
+    }
+}
+
+fn embedded_style(style: style::Embedded) -> Style {
+    Style { layer: style.layer.to_owned(), name: style.name.to_owned(), qml: style.qml, sld: style.sld }
+}
+
