@@ -196,7 +196,7 @@ impl PartialEq for MapCrs {
 fn spelled_for_proj(given: &str) -> String {
     if given.bytes().all(|b| b.is_ascii_digit()) {
         format!("EPSG:{given}")
-    } else if given.contains("+proj=") && !given.contains("+type=crs") {
+    } else if given.contains("+proj=") && !given.contains("+type=crs") && !given.contains("+proj=pipeline") {
         format!("{given} +type=crs")
     } else {
         given.to_owned()
@@ -226,8 +226,12 @@ fn unsuited(kind: ObjectKind) -> Option<&'static str> {
 /// The registered CRS that places coordinates just as this one does: by the code it claims when that is
 /// true, else by PROJ's search of the EPSG registry.
 fn registered(crs: &Object) -> Option<Object> {
-    let claimed = crs.authority().and_then(|(authority, code)| crs.sibling(&format!("{authority}:{code}")));
-    claimed.filter(|known| known.same_as(crs)).or_else(|| crs.candidates().into_iter().find(|known| known.same_as(crs)))
+    // What a search finds is a sketch: the registry's own entry has the area of use.
+    let entry = |found: &Object| {
+        let (authority, code) = found.authority()?;
+        crs.sibling(&format!("{authority}:{code}")).filter(|known| known.same_as(crs))
+    };
+    entry(crs).or_else(|| crs.candidates().iter().find_map(entry))
 }
 
 /// The first words of a definition, for messages.

@@ -130,13 +130,19 @@ impl CrsError {
             Self::Unsuited { what, .. } if what.contains("geocentric") => {
                 "convert X, Y, Z to longitude and latitude first, or give the CRS of the positions"
             }
-            Self::Unsuited { .. } => "give a projected CRS such as a UTM zone, or a geographic one such as \"EPSG:4326\"",
+            Self::Unsuited { .. } => {
+                "give a projected CRS such as a UTM zone, or a geographic one such as \"EPSG:4326\""
+            }
             Self::AxesReversed { .. } => "take an east-north CRS for the same ground, for example its UTM zone",
             Self::NoTransformation { .. } => "the two may belong to different planets, or a datum may be missing",
-            Self::NoGrid { .. } => "set north to \"true\" or \"magnetic\", or give the projected CRS whose grid was used",
+            Self::NoGrid { .. } => {
+                "set north to \"true\" or \"magnetic\", or give the projected CRS whose grid was used"
+            }
             Self::Declination { .. } => "declination is in degrees, east positive",
             Self::Lengths { .. } => return None,
-            Self::Swapped { .. } => "exchange the x and y columns: x is the easting or longitude, y the northing or latitude",
+            Self::Swapped { .. } => {
+                "exchange the x and y columns: x is the easting or longitude, y the northing or latitude"
+            }
             Self::NoCentroid => "check the position columns and crs, or set the map's crs",
             Self::NoZone => "set the map's crs",
             Self::InSource { cause, .. } => return cause.hint(),

@@ -130,7 +130,9 @@ impl Object {
     /// Authority and code the object carries.
     pub fn authority(&self) -> Option<(String, String)> {
         // SAFETY: as in `name`.
-        unsafe { Some((text(proj_get_id_auth_name(self.pj.as_ptr(), 0))?, text(proj_get_id_code(self.pj.as_ptr(), 0))?)) }
+        unsafe {
+            Some((text(proj_get_id_auth_name(self.pj.as_ptr(), 0))?, text(proj_get_id_code(self.pj.as_ptr(), 0))?))
+        }
     }
 
     /// Area of use; `None` where the definition states none.
@@ -227,9 +229,7 @@ impl Object {
     /// The definition as WKT 2 (ISO 19162:2019).
     pub fn wkt(&self) -> Option<String> {
         // SAFETY: the text belongs to the live object and is copied at once.
-        unsafe {
-            text(proj_as_wkt(self.context.raw(), self.pj.as_ptr(), PJ_WKT_TYPE_PJ_WKT2_2019, null()))
-        }
+        unsafe { text(proj_as_wkt(self.context.raw(), self.pj.as_ptr(), PJ_WKT_TYPE_PJ_WKT2_2019, null())) }
     }
 
     /// True where both place every coordinate alike once easting or longitude comes first.
@@ -338,9 +338,7 @@ impl Operation {
             let x = base.add(offset_of!(Coord<f64>, x)).cast::<f64>();
             let y = base.add(offset_of!(Coord<f64>, y)).cast::<f64>();
             proj_errno_reset(self.pj.as_ptr());
-            proj_trans_generic(
-                self.pj.as_ptr(), direction, x, step, n, y, step, n, null_mut(), 0, 0, null_mut(), 0, 0,
-            );
+            proj_trans_generic(self.pj.as_ptr(), direction, x, step, n, y, step, n, null_mut(), 0, 0, null_mut(), 0, 0);
         }
     }
 }

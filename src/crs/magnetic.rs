@@ -97,7 +97,7 @@ mod tests {
     }
 
     // Responses of the British Geological Survey's IGRF-14 calculator (three decimals). From 2020 on the
-    // program asks the WMM, another model of the same field, which the last two rows hold to 0.1 degrees.
+    // program asks the WMM, another model of the same field, which the last two rows hold to 0.02 degrees.
     #[test]
     fn igrf_calculator_values() {
         for (year, km, lat, lon, want, within) in [
@@ -109,22 +109,22 @@ mod tests {
             (2004.0, 0.0, -45.0, 170.0, 23.958, 0.0025),
             (2013.0, 0.0, 30.0, -90.0, -0.342, 0.0025),
             (2019.0 + 181.0 / 365.0, 0.0, 48.9, 2.35, 0.933, 0.01),
-            (2022.0 + 181.0 / 365.0, 0.0, 39.95, -75.17, -11.932, 0.1),
-            (2027.0, 10.0, 10.0, -30.0, -12.351, 0.1),
+            (2022.0 + 181.0 / 365.0, 0.0, 39.95, -75.17, -11.932, 0.02),
+            (2027.0, 10.0, 10.0, -30.0, -12.351, 0.02),
         ] {
             let got = declination(year, km, lat, lon);
-            println!("{year} {got} {want} {}", got - want);
             assert!((got - want).abs() <= within, "{year} {km} km {lat} {lon}: {got}, published {want}");
         }
     }
 
-    // The two families describe one field: no jump where one hands over to the other.
+    // All describe one field: where one hands over to the next, no jump beyond the 0.3 degrees that the WMM
+    // itself claims away from the magnetic poles.
     #[test]
     fn models_meet_at_their_seams() {
         for seam in [2020.0, 2025.0] {
             for (lat, lon) in [(50.0, 10.0), (-30.0, 140.0), (20.0, -100.0), (0.0, 0.0)] {
                 let (before, after) = (declination(seam - 0.003, 0.0, lat, lon), declination(seam, 0.0, lat, lon));
-                assert!((before - after).abs() < 0.15, "{seam} {lat} {lon}: {before} then {after}");
+                assert!((before - after).abs() < 0.3, "{seam} {lat} {lon}: {before} then {after}");
             }
         }
     }
