@@ -44,7 +44,8 @@ const UNKNOWN: [&str; 10] =
 pub fn polarity(text: &str) -> Result<Polarity, NotationError> {
     // Compared without building a lower-case copy: this runs once per row.
     let same = |word: &&str| {
-        let mut theirs = text.trim().bytes().map(|b| if matches!(b, b'-' | b'_') { b' ' } else { b.to_ascii_lowercase() });
+        let mut theirs =
+            text.trim().bytes().map(|b| if matches!(b, b'-' | b'_') { b' ' } else { b.to_ascii_lowercase() });
         word.bytes().all(|b| theirs.next() == Some(b)) && theirs.next().is_none()
     };
     if UPRIGHT.iter().any(|w| same(w)) {

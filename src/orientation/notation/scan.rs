@@ -21,6 +21,8 @@ pub(super) struct Num {
 pub(super) enum Token {
     Num(Num),
     Point(CompassPoint),
+    /// "due N": that bearing and no more of one.
+    Due(CompassPoint),
     /// A slash, bar, semicolon, or a comma between two readings.
     Slash,
     Arrow,
@@ -120,7 +122,12 @@ fn angle(s: &[u8], at: usize, commas: bool) -> Option<(Num, usize)> {
         _ if s.get(i) == Some(&b'*') => 1,
         _ => {
             let gap = skip_blanks(s, i);
-            if s.get(gap) == Some(&b'*') { gap - i + 1 } else { 0 }
+            match &s[gap..] {
+                [b'*', ..] => gap - i + 1,
+                rest if rest.starts_with(b"degrees") => gap - i + 7,
+                rest if rest.starts_with(b"deg") => gap - i + 3,
+                _ => 0,
+            }
         }
     };
     let mut whole = !decimals && sign == 0;
@@ -216,7 +223,12 @@ fn word(s: &[u8], i: usize, out: &mut Tokens) -> Option<usize> {
         end += 1;
     }
     let token = match letters {
-        "due" => return Some(end),
+        "due" => {
+            let from = skip_blanks(s, end);
+            let len = s[from..].iter().take_while(|b| b.is_ascii_alphabetic()).count();
+            end = from + len;
+            Token::Due(compass_point(std::str::from_utf8(&s[from..end]).ok()?)?)
+        }
         "horizontal" | "flat" | "hor" | "horiz" => Token::Horizontal,
         "vertical" | "vert" => Token::Vertical,
         "rake" | "pitch" => Token::Rake,

@@ -73,7 +73,11 @@ impl Parts {
 
 /// A bearing in letters at the start of `items`, and how many tokens it took.
 pub(super) fn lettered(items: &[Token]) -> Option<Result<(f64, usize), ()>> {
-    let Some(Token::Point(from)) = items.first() else { return None };
+    let from = match items.first()? {
+        Token::Point(from) => from,
+        Token::Due(point) => return Some(Ok((point.azimuth, 1))),
+        _ => return None,
+    };
     if let Some((num, used)) = items.get(1..).and_then(blank_parted)
         && let Some(Token::Point(toward)) = items.get(1 + used)
         && from.is_cardinal()
@@ -135,6 +139,10 @@ fn parts(tokens: &Tokens) -> Option<Parts> {
                     i += used;
                 }
             }
+            Token::Due(p) => {
+                out.push(Part::Lettered(p.azimuth))?;
+                i += 1;
+            }
             Token::Horizontal | Token::Vertical => {
                 out.push(Part::Word(if items[i] == Token::Vertical { 90.0 } else { 0.0 }))?;
                 i += 1;
@@ -184,7 +192,8 @@ fn order_of(a: Num, b: Num) -> Order {
 /// What `text` shows about the notation of its column; nothing where it is unreadable.
 pub fn written_as(text: &str) -> Written {
     let Some(p) = tokens(text).as_ref().and_then(parts) else { return Written::default() };
-    let letters = p.side.is_some() || p.parts.iter().flatten().any(|p| matches!(p, Part::Lettered(_) | Part::Sided(..)));
+    let letters =
+        p.side.is_some() || p.parts.iter().flatten().any(|p| matches!(p, Part::Lettered(_) | Part::Sided(..)));
     let order = match p.parts {
         [Some(Part::Plain(a)), Some(Part::Plain(b))] => order_of(a, b),
         _ => Order::Unknown,
@@ -270,7 +279,12 @@ pub fn attitude(text: &str, wanted: Wanted, notation: Notation, order: Order) ->
     let found = tokens(text).ok_or_else(unreadable)?;
     let p = match parts(&found) {
         Some(p) => p,
-        None if found.as_slice().iter().enumerate().any(|(i, _)| matches!(lettered(&found.as_slice()[i..]), Some(Err(())))) => {
+        None if found
+            .as_slice()
+            .iter()
+            .enumerate()
+            .any(|(i, _)| matches!(lettered(&found.as_slice()[i..]), Some(Err(())))) =>
+        {
             return Err(NotationError::QuadrantBearing(text.to_owned()));
         }
         None => return Err(unreadable()),
