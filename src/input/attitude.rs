@@ -29,6 +29,7 @@ pub(super) struct Evidence {
 struct Count {
     rows: usize,
     letters: usize,
+    quadrants: usize,
     arrows: usize,
     azimuth_first: usize,
     inclination_first: usize,
@@ -36,7 +37,8 @@ struct Count {
 
 /// Looks through the attitude columns once.
 ///
-/// Auto becomes: quadrant where more than half of the filled rows have compass letters; dip-direction where the only
+/// Auto becomes: quadrant where a dip quadrant column holds anything, or more than half of the filled rows have compass
+/// letters beside their numbers; dip-direction where the only
 /// azimuth is a dip direction by name, or where more than half of the texts have an arrow; trend-plunge where only
 /// a trend is there; right-hand otherwise, which is said in a notice when a plane is read by it.
 pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> Evidence {
@@ -51,7 +53,7 @@ pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> 
         _ => Order::Unknown,
     };
     if in_name == Notation::Auto {
-        out.notation = if 2 * count.letters > count.rows {
+        out.notation = if count.quadrants > 0 || 2 * count.letters > count.rows {
             Notation::Quadrant
         } else if texts.is_some() && 2 * count.arrows > count.rows
             || texts.is_none() && columns.strike.is_none() && columns.dip_direction.is_some()
@@ -96,10 +98,10 @@ fn count(table: &Table, columns: &Columns) -> Count {
                     && filled(Some(strike), row)
                 {
                     c.rows += 1;
+                    c.quadrants += usize::from(filled(columns.quadrant, row));
+                    let (strike, dip) = (text(Some(strike), row), text(columns.dip, row));
                     c.letters += usize::from(
-                        filled(columns.quadrant, row)
-                            || lettered(text(Some(strike), row)) && azimuth_has_letters(text(Some(strike), row))
-                            || lettered(text(columns.dip, row)) && dip_has_letters(text(columns.dip, row)),
+                        lettered(strike) && azimuth_has_letters(strike) || lettered(dip) && dip_has_letters(dip),
                     );
                 }
             }
@@ -108,6 +110,7 @@ fn count(table: &Table, columns: &Columns) -> Count {
         .reduce(Count::default, |a, b| Count {
             rows: a.rows + b.rows,
             letters: a.letters + b.letters,
+            quadrants: a.quadrants + b.quadrants,
             arrows: a.arrows + b.arrows,
             azimuth_first: a.azimuth_first + b.azimuth_first,
             inclination_first: a.inclination_first + b.inclination_first,

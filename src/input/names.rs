@@ -81,7 +81,18 @@ impl Meaning {
                 &[&["azimuth", "azimut", "azi", "az", "azm", "acimut"], &["direction", "dir", "bearing", "direccion"]]
             }
             Self::Strike => &[
-                &["strike", "strikerhr", "rhrstrike", "strikeazimuth", "strikeaz", "streichen"],
+                &[
+                    "strike",
+                    "strikerhr",
+                    "strikelhr",
+                    "rhrstrike",
+                    "lhrstrike",
+                    "strikerighthand",
+                    "strikelefthand",
+                    "strikeazimuth",
+                    "strikeaz",
+                    "streichen",
+                ],
                 &["str", "strk", "strikedir", "strikedirection", "rumbo", "direzione"],
             ],
             Self::DipDirection => &[

@@ -206,8 +206,11 @@ impl Job<'_> {
         // From here on the row is accepted: only now may it count.
         if let Some(column) = found.wrapped {
             tallies.wrapped.add(row, Some(column));
-            let just_a_turn = matches!(value(&self.table.fields[column].column, row), Value::Number(360.0))
-                || matches!(value(&self.table.fields[column].column, row), Value::Text(t) if t.trim_start_matches('0').starts_with("360"));
+            let just_a_turn = match value(&self.table.fields[column].column, row) {
+                Value::Number(v) => v == 360.0,
+                Value::Text(t) => t.parse() == Ok(360.0),
+                Value::Blank => false,
+            };
             tallies.over += usize::from(!just_a_turn);
         }
         if found.assumed {

@@ -70,7 +70,7 @@ pub(super) fn bearing(quantity: Quantity, degrees: f64) -> Result<Bearing, Notat
 
 /// A rake in [0, `high`].
 pub(super) fn rake(value: f64, high: f64) -> Result<f64, NotationError> {
-    if (0.0..=high).contains(&value) && !(is_missing_code(value) && high < value) {
+    if (0.0..=high).contains(&value) {
         Ok(value)
     } else if !value.is_finite() {
         Err(NotationError::NotFinite { quantity: Quantity::Rake })
