@@ -1,1 +1,90 @@
-//! (being built)
+//! From a table as found to readings: which column is what, how the attitude is written, which rows can be used.
+//!
+//! Invariant: every row of the table ends as one measurement or one refusal, in source order, whatever the number of
+//! threads; what was guessed on the way stands in a notice.
+
+mod attitude;
+mod choose;
+mod dates;
+mod duplicates;
+mod error;
+mod names;
+mod place;
+mod row;
+mod rows;
+mod spec;
+mod structures;
+mod value;
+
+pub use choose::UsedColumn;
+pub use error::{InputError, InputFault};
+pub use spec::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
+
+use crate::notice::{Notice, Place, Refusal};
+use crate::orientation::notation::Notation;
+use crate::station::{Declination, Measurements, North};
+use crate::table::Table;
+
+/// What a table of stations gave.
+#[derive(Debug, Clone, PartialEq)]
+pub struct InputReadings {
+    /// The accepted rows.
+    pub measurements: Measurements,
+    /// The others: `measurements` and `refusals` together are all rows of the table.
+    pub refusals: Vec<Refusal>,
+    /// What was assumed, and what to look at.
+    pub notices: Vec<Notice>,
+    /// Which column was read as what.
+    pub columns: Vec<UsedColumn>,
+    /// How plain azimuths of planes were read; never [`Notation::Auto`].
+    pub notation: Notation,
+}
+
+/// Reads a table of stations.
+///
+/// Columns that `spec` does not name are guessed from common spellings. An error means that the table as a whole cannot
+/// be read (no position, no attitude, no structure, no CRS, two columns equally good for one meaning); a row that
+/// cannot be read is a refusal. All angles are degrees.
+pub fn readings(table: &Table, spec: &StationSpec) -> Result<InputReadings, InputError> {
+    let fail = |fault| InputError { file: spec.file.clone(), fault };
+    let mut notices = Vec::new();
+    let columns = choose::columns(table, spec, &mut notices).map_err(fail)?;
+    let crs = place::crs(table, spec, &columns, &mut notices).map_err(fail)?;
+    let north = north(spec, &columns, &mut notices).map_err(fail)?;
+    let dates = match north {
+        North::Magnetic(Declination::Model) => {
+            Some(dates::Dates::new(table, columns.date, spec.date.as_deref()).map_err(fail)?)
+        }
+        _ => None,
+    };
+    let evidence = attitude::evidence(table, &columns, spec.notation);
+    let structures = structures::resolve(table, spec, &columns, &mut notices).map_err(fail)?;
+    let job = rows::Job { table, spec, columns: &columns, north: &north, dates, evidence, structures: &structures };
+    let (measurements, refusals) = rows::read(&job, crs, &mut notices);
+    duplicates::report(&measurements, &spec.file, &mut notices);
+    Ok(InputReadings { measurements, refusals, notices, columns: columns.used, notation: evidence.notation })
+}
+
+fn north(spec: &StationSpec, columns: &choose::Columns, notices: &mut Vec<Notice>) -> Result<North, InputFault> {
+    Ok(match spec.north {
+        None => {
+            notices.push(
+                Notice::info("north-assumed", Place::file(&spec.file), "azimuths were read as counted from true north")
+                    .hint("say north = \"true\", \"grid\" or \"magnetic\""),
+            );
+            North::True
+        }
+        Some(NorthReference::True) => North::True,
+        Some(NorthReference::Grid) => North::Grid,
+        Some(NorthReference::Magnetic) => North::Magnetic(match &spec.declination {
+            Some(DeclinationSpec::Constant(d)) if !(d.abs() <= 180.0) => {
+                return Err(InputFault::DeclinationRange(*d));
+            }
+            Some(DeclinationSpec::Constant(d)) => Declination::Constant(*d),
+            Some(DeclinationSpec::Model) => Declination::Model,
+            Some(DeclinationSpec::Column(_)) => Declination::PerReading,
+            None if columns.declination.is_some() => Declination::PerReading,
+            None => return Err(InputFault::NoDeclination),
+        }),
+    })
+}

@@ -7,6 +7,7 @@ mod angle;
 mod attitude;
 mod axis;
 mod exact_sum;
+pub mod notation;
 mod tensor;
 
 pub use angle::{AngleError, Bearing, Dip, GridAzimuth, MagneticAzimuth, Rotation, TrueAzimuth, wrap_degrees};
