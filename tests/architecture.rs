@@ -86,7 +86,10 @@ fn imports_run_downwards() {
             uses += usize::from(used != module);
             assert!(used == module || below < own, "{path} (floor {own}) uses {used} (floor {below})");
         }
-        assert!(!text.contains("use crate::{"), "{path}: one `use crate::…` per module, so that this test can read them");
+        assert!(
+            !text.contains("use crate::{"),
+            "{path}: one `use crate::…` per module, so that this test can read them"
+        );
     }
     assert!(uses > 30, "found only {uses} uses between modules");
 }
@@ -127,7 +130,13 @@ fn a_file_is_one_idea() {
 #[test]
 fn nothing_is_left_unfinished() {
     // Spelled in halves, so that this file does not find itself.
-    let marks = [concat!("to", "do!("), concat!("unimple", "mented!("), concat!("TO", "DO"), concat!("FIX", "ME"), concat!("#[ig", "nore")];
+    let marks = [
+        concat!("to", "do!("),
+        concat!("unimple", "mented!("),
+        concat!("TO", "DO"),
+        concat!("FIX", "ME"),
+        concat!("#[ig", "nore"),
+    ];
     for (path, text) in sources() {
         for mark in marks {
             assert!(!text.contains(mark), "{path} holds {mark}");

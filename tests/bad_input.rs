@@ -29,7 +29,10 @@ fn refuses(row: &[u8], words: &[&str]) {
     assert_eq!(said.code, 0, "{}", said.err);
     let summary = area.summary("out");
     let counts = &summary["run"]["counts"];
-    assert_eq!((counts["read"].as_u64(), counts["kept"].as_u64(), counts["refused"].as_u64()), (Some(7), Some(6), Some(1)));
+    assert_eq!(
+        (counts["read"].as_u64(), counts["kept"].as_u64(), counts["refused"].as_u64()),
+        (Some(7), Some(6), Some(1))
+    );
     let refusal = &summary["refusals"][0];
     assert_eq!(refusal["source"], "stations.csv");
     assert_eq!(refusal["row"], 8, "the header is line 1");
@@ -58,7 +61,10 @@ fn an_empty_file() {
 
 #[test]
 fn a_header_and_nothing_else() {
-    stops(&Area::with(&[("area.toml", AREA), ("stations.csv", "id,x,y,structure,strike,dip\n")]), &["stations.csv", "no rows"]);
+    stops(
+        &Area::with(&[("area.toml", AREA), ("stations.csv", "id,x,y,structure,strike,dip\n")]),
+        &["stations.csv", "no rows"],
+    );
 }
 
 #[test]
@@ -115,7 +121,10 @@ fn a_ragged_row() {
 fn polygons_that_are_points() {
     let points = r#"{"type":"FeatureCollection","features":[{"type":"Feature","properties":{"name":"n"},"geometry":{"type":"Point","coordinates":[15,48]}}]}"#;
     let toml = format!("{AREA}[domains]\npolygons = \"p.geojson\"\n");
-    stops(&Area::with(&[("area.toml", &toml), ("stations.csv", STATIONS), ("p.geojson", points)]), &["p.geojson", "point"]);
+    stops(
+        &Area::with(&[("area.toml", &toml), ("stations.csv", STATIONS), ("p.geojson", points)]),
+        &["p.geojson", "point"],
+    );
 }
 
 #[test]
@@ -177,7 +186,8 @@ fn a_full_disk() {
     let program = env!("CARGO_BIN_EXE_homocline");
     for blocks in [1, 8, 64, 128] {
         let script = format!("trap '' XFSZ; ulimit -f {blocks}; exec '{program}' run area.toml");
-        let output = std::process::Command::new("bash").args(["-c", &script]).current_dir(area.path("")).output().unwrap();
+        let output =
+            std::process::Command::new("bash").args(["-c", &script]).current_dir(area.path("")).output().unwrap();
         let err = String::from_utf8_lossy(&output.stderr).into_owned();
         assert_eq!(output.status.code(), Some(2), "{blocks} KiB: {err}");
         assert!(err.contains("error:") && err.contains("out"), "{blocks} KiB: {err}");

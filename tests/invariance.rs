@@ -25,7 +25,8 @@ fn rows(turn: f64) -> Vec<String> {
     (0..60)
         .map(|i| {
             let spread = f64::from((i * 37) % 23) - 11.0;
-            let (strike, dip) = if i % 2 == 0 { (40.0 + spread, 35 + (i * 7) % 11) } else { (130.0 + spread, 60 + (i * 5) % 13) };
+            let (strike, dip) =
+                if i % 2 == 0 { (40.0 + spread, 35 + (i * 7) % 11) } else { (130.0 + spread, 60 + (i * 5) % 13) };
             let (x, y) = (500_000 + (i % 2) * 1000 + (i * 13) % 400, 5_400_000 + (i * 29) % 900);
             format!("s{i},{x},{y},bedding,{},{dip}\n", (strike + turn).rem_euclid(360.0))
         })
@@ -60,10 +61,13 @@ fn shuffled_split_and_threaded_runs_agree_to_the_last_bit() {
 
 #[test]
 fn vertical_planes_seen_from_either_side_are_one() {
-    let row = |i: i32, flip: bool| format!("s{i},{},{},joint,{},90\n", 500_000 + i, 5_400_000 + i, (20 + i) + if flip { 180 } else { 0 });
+    let row = |i: i32, flip: bool| {
+        format!("s{i},{},{},joint,{},90\n", 500_000 + i, 5_400_000 + i, (20 + i) + if flip { 180 } else { 0 })
+    };
     let one: String = (0..12).map(|i| row(i, false)).chain(rows(0.0).into_iter().skip(1).step_by(2)).collect();
     let other: String = (0..12).map(|i| row(i, i % 3 == 0)).chain(rows(0.0).into_iter().skip(1).step_by(2)).collect();
-    let (one, other) = (fabrics(&[("a.csv", HEADER.to_owned() + &one)], &[]), fabrics(&[("a.csv", HEADER.to_owned() + &other)], &[]));
+    let (one, other) =
+        (fabrics(&[("a.csv", HEADER.to_owned() + &one)], &[]), fabrics(&[("a.csv", HEADER.to_owned() + &other)], &[]));
     for (a, b) in one.as_array().unwrap().iter().zip(other.as_array().unwrap()) {
         for field in ["s1", "s2", "s3", "v1_trend", "v1_plunge", "mean_cone_major", "fisher_alpha95"] {
             let (a, b) = (a[field].as_f64().unwrap(), b[field].as_f64().unwrap());
@@ -80,7 +84,9 @@ fn the_answer_turns_with_the_readings() {
         let turned = fabrics(&[("a.csv", HEADER.to_owned() + &rows(turn).concat())], &[]);
         for (a, b) in still.as_array().unwrap().iter().zip(turned.as_array().unwrap()) {
             assert_eq!((&a["domain"], &a["shape"], &a["n"]), (&b["domain"], &b["shape"], &b["n"]));
-            for field in ["s1", "s2", "s3", "mean_dip", "mean_cone_major", "mean_cone_minor", "uniformity_p", "fisher_kappa"] {
+            for field in
+                ["s1", "s2", "s3", "mean_dip", "mean_cone_major", "mean_cone_minor", "uniformity_p", "fisher_kappa"]
+            {
                 let (a, b) = (a[field].as_f64().unwrap(), b[field].as_f64().unwrap());
                 assert!((a - b).abs() <= 1e-9 * a.abs().max(1.0), "{field} at {turn}: {a} {b}");
             }

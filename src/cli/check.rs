@@ -10,7 +10,8 @@ use crate::job;
 /// Reads and validates; returns the exit status.
 pub(super) fn check(args: &RunArgs, printer: &Printer) -> u8 {
     let progress = progress(args.common.quiet);
-    let checked = job::plan(args.area.as_deref(), &overrides(args)).and_then(|plan| job::check(&plan, progress.as_ref()));
+    let checked =
+        job::plan(args.area.as_deref(), &overrides(args)).and_then(|plan| job::check(&plan, progress.as_ref()));
     let checked = match checked {
         Ok(checked) => checked,
         Err(error) => {

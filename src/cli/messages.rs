@@ -46,7 +46,8 @@ impl Printer {
         if self.quiet {
             return;
         }
-        let shown = if all || self.format == MessageFormat::Json { refusals.len() } else { refusals.len().min(REFUSALS_SHOWN) };
+        let shown =
+            if all || self.format == MessageFormat::Json { refusals.len() } else { refusals.len().min(REFUSALS_SHOWN) };
         for refusal in &refusals[..shown] {
             self.message(&Message {
                 severity: "refused",
@@ -61,7 +62,10 @@ impl Printer {
         if shown < refusals.len() {
             print(
                 io::stderr(),
-                &format!("refused: {} further rows; `homocline check` and the refusals layer list them all", refusals.len() - shown),
+                &format!(
+                    "refused: {} further rows; `homocline check` and the refusals layer list them all",
+                    refusals.len() - shown
+                ),
             );
         }
     }

@@ -76,7 +76,11 @@ fn fabric_line(line: &FabricLine) -> String {
             parts.push(format!("mean plane {strike:03.0}/{:02.0} (right-hand strike/dip)", plane.dip.degrees()));
         }
         (Some(axis), Kind::Linear) => {
-            parts.push(format!("mean line {:03.0}/{:02.0} (trend/plunge)", axis.trend().round() % 360.0, axis.plunge()));
+            parts.push(format!(
+                "mean line {:03.0}/{:02.0} (trend/plunge)",
+                axis.trend().round() % 360.0,
+                axis.plunge()
+            ));
         }
         (None, _) => {}
     }

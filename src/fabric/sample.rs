@@ -1,28 +1,10 @@
 //! One sample: the axes of one structure in one domain, with weights and the station of each.
 
 use crate::orientation::{Axis, OrientationTensor};
+pub use crate::station::Kind;
 use nalgebra::Vector3;
 use std::borrow::Cow;
 use thiserror::Error;
-
-/// What the axes of a sample are.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
-pub enum Kind {
-    /// Poles of planes.
-    Planar,
-    /// Lines.
-    Linear,
-}
-
-impl Kind {
-    /// The word written into layers.
-    pub fn word(self) -> &'static str {
-        match self {
-            Self::Planar => "planar",
-            Self::Linear => "linear",
-        }
-    }
-}
 
 /// Why columns do not make a sample.
 #[derive(Debug, Clone, Copy, PartialEq, Error)]

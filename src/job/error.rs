@@ -31,7 +31,9 @@ pub enum JobError {
     #[error(transparent)]
     Domain(#[from] DomainError),
     /// A file has no CRS.
-    #[error("{file}: does not say its coordinate reference system; give the file a .prj, or choose a format that carries one")]
+    #[error(
+        "{file}: does not say its coordinate reference system; give the file a .prj, or choose a format that carries one"
+    )]
     NoCrs {
         /// The file.
         file: String,

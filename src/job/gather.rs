@@ -82,8 +82,11 @@ pub(super) fn gather(plan: &Plan, progress: &dyn Progress) -> Result<Gathered, J
 }
 
 fn read(located: &Located, progress: &dyn Progress) -> Result<ReadTable, JobError> {
-    let source =
-        Source { path: located.named.clone(), location: located.location.clone(), layer: located.layer.clone() };
+    let source = Source {
+        path: located.named.clone(),
+        location: located.location.display().to_string(),
+        layer: located.layer.clone(),
+    };
     Ok(format::read(&source, progress)?)
 }
 
@@ -122,7 +125,8 @@ fn domains(
         DomainPlan::Polygons { source, name, same_name, nearest } => {
             let (table, shapes) = shapes(source, map, notices, progress)?;
             let names = names(&table, &source.named, name.as_deref(), notices)?;
-            let features = feature_ids(&table).zip(names).zip(shapes).map(|((id, name), shape)| (id, name, shape)).collect();
+            let features =
+                feature_ids(&table).zip(names).zip(shapes).map(|((id, name), shape)| (id, name, shape)).collect();
             let (polygons, more) = domain::clean(&source.named, features, *same_name)?;
             notices.extend(more);
             progress.begin("assigning domains", None);
@@ -145,9 +149,11 @@ fn shapes(
 ) -> Result<(Table, Vec<Option<Geometry<f64>>>), JobError> {
     let read = read(located, progress)?;
     notices.extend(read.notices);
-    notices.extend(read.refused.iter().map(|r| {
-        Notice::warning(r.code, Place::file(&r.source).at_row(r.row), format!("left out: {}", r.reason))
-    }));
+    notices.extend(
+        read.refused
+            .iter()
+            .map(|r| Notice::warning(r.code, Place::file(&r.source).at_row(r.row), format!("left out: {}", r.reason))),
+    );
     let mut table = read.table;
     let file = || located.named.clone();
     let definition = table.crs.clone().ok_or_else(|| JobError::NoCrs { file: file() })?;
@@ -177,7 +183,12 @@ fn names(table: &Table, file: &str, column: Option<&str>, notices: &mut Vec<Noti
     let position = match column {
         Some(name) => Some(table.position(name).ok_or_else(|| {
             let known = table.fields.iter().map(|f| f.name.as_str()).collect::<Vec<_>>().join(", ");
-            super::AreaFileError::value(file, "domains.name", format!("\"{name}\""), format!("there is no such column; there are: {known}"))
+            super::AreaFileError::value(
+                file,
+                "domains.name",
+                format!("\"{name}\""),
+                format!("there is no such column; there are: {known}"),
+            )
         })?),
         None => NAME_COLUMNS.iter().find_map(|name| table.position(name)),
     };

@@ -27,7 +27,9 @@ pub enum OutputError {
         cause: io::Error,
     },
     /// The result would replace a source.
-    #[error("{file} is an input of this run and would be overwritten; choose another folder with --out or output.folder")]
+    #[error(
+        "{file} is an input of this run and would be overwritten; choose another folder with --out or output.folder"
+    )]
     OverwritesInput {
         /// The file.
         file: String,
@@ -57,9 +59,7 @@ impl Staging {
         fs::create_dir_all(folder).map_err(fault)?;
         for target in targets {
             let target = folder.join(target);
-            let same = |input: &PathBuf| {
-                matches!((fs::canonicalize(input), fs::canonicalize(&target)), (Ok(a), Ok(b)) if a == b)
-            };
+            let same = |input: &PathBuf| matches!((fs::canonicalize(input), fs::canonicalize(&target)), (Ok(a), Ok(b)) if a == b);
             if inputs.iter().any(same) {
                 return Err(OutputError::OverwritesInput { file: target.display().to_string() });
             }
@@ -78,9 +78,13 @@ impl Staging {
     }
 
     /// Writes a whole file through `fill`.
-    pub fn write(&mut self, name: &str, fill: impl FnOnce(&mut dyn Write) -> io::Result<()>) -> Result<(), OutputError> {
+    pub fn write(
+        &mut self,
+        name: &str,
+        fill: impl FnOnce(&mut dyn Write) -> io::Result<()>,
+    ) -> Result<(), OutputError> {
         let path = self.path(name)?;
-        let mut attempt = || {
+        let attempt = || {
             let mut file = io::BufWriter::new(fs::File::create(&path)?);
             fill(&mut file)?;
             file.into_inner().map_err(io::IntoInnerError::into_error)?.sync_all()

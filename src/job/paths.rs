@@ -23,11 +23,9 @@ impl Located {
         }
         match named.rsplit_once(':') {
             // One letter before the colon is a drive, not a file.
-            Some((file, layer)) if file.len() > 1 && !layer.is_empty() && !layer.contains(['/', '\\']) => Self {
-                named: file.to_owned(),
-                location: resolved(file, base),
-                layer: Some(layer.to_owned()),
-            },
+            Some((file, layer)) if file.len() > 1 && !layer.is_empty() && !layer.contains(['/', '\\']) => {
+                Self { named: file.to_owned(), location: resolved(file, base), layer: Some(layer.to_owned()) }
+            }
             _ => whole,
         }
     }

@@ -128,7 +128,11 @@ impl Checker<'_> {
     }
 
     fn one_of(&self, key: &str, value: &str, known: &[&str]) -> Result<(), JobError> {
-        if known.contains(&value) { Ok(()) } else { Err(self.value(key, format!("\"{value}\""), choices(value, known))) }
+        if known.contains(&value) {
+            Ok(())
+        } else {
+            Err(self.value(key, format!("\"{value}\""), choices(value, known)))
+        }
     }
 
     fn ranges(&self, options: &AreaFile) -> Result<(), JobError> {
@@ -152,7 +156,8 @@ impl Checker<'_> {
 
     /// What the area file may ask for one day and this version cannot do: an error beats a silent omission.
     fn not_yet(&self, options: &AreaFile) -> Result<(), JobError> {
-        let cannot = |key: &str, value: &str| Err(self.value(key, format!("\"{value}\""), "this version cannot do that yet"));
+        let cannot =
+            |key: &str, value: &str| Err(self.value(key, format!("\"{value}\""), "this version cannot do that yet"));
         if options.fabric.terzaghi != "none" {
             return cannot("fabric.terzaghi", &options.fabric.terzaghi);
         }
@@ -252,8 +257,13 @@ impl Checker<'_> {
         };
         let notation = match section.notation.as_deref() {
             None => Notation::Auto,
-            Some(word) => Notation::from_word(word)
-                .ok_or_else(|| self.value("stations.notation", format!("\"{word}\""), choices(word, &Notation::WORDS)))?,
+            Some(word) => Notation::from_word(word).ok_or_else(|| {
+                self.value(
+                    "stations.notation",
+                    format!("\"{word}\""),
+                    choices(word, &Notation::ALL.map(Notation::word)),
+                )
+            })?,
         };
         let columns = &section.columns;
         Ok(StationSpec {

@@ -41,6 +41,10 @@ pub struct FabricLine {
 
 /// Time stamp of the GeoPackage's contents: fixed, so that the same input writes the same bytes.
 const NO_TIME: &str = "1970-01-01T00:00:00.000Z";
+/// The record of a run is our own JSON; the URI of the format stands for it.
+const RECORD_URI: &str = "https://www.rfc-editor.org/rfc/rfc8259";
+/// The area file's format.
+const TOML_URI: &str = "https://toml.io/en/v1.0.0";
 /// Files written besides the styles.
 const TARGETS: [&str; 2] = ["area.gpkg", "summary.json"];
 
@@ -165,8 +169,12 @@ fn record(plan: &Plan, crs: &str, counts: &AllCounts, notices: &[Notice]) -> Res
 /// The record of the run, and the area file as typed, inside the GeoPackage.
 fn metadata(plan: &Plan, record: &RunRecord) -> Vec<Metadata> {
     let json = serde_json::to_string(record).unwrap_or_default();
-    let mut list = vec![Metadata { mime_type: "application/json".into(), text: json }];
-    list.extend(plan.text.clone().map(|text| Metadata { mime_type: "application/toml".into(), text }));
+    let mut list = vec![Metadata { standard_uri: RECORD_URI.into(), mime_type: "application/json".into(), text: json }];
+    list.extend(plan.text.clone().map(|text| Metadata {
+        standard_uri: TOML_URI.into(),
+        mime_type: "application/toml".into(),
+        text,
+    }));
     list
 }
 
@@ -184,6 +192,12 @@ fn to_write<'a>(layer: &layer::Layer, table: &'a crate::table::Table) -> LayerTo
 }
 
 fn embedded_style(style: style::Embedded) -> Style {
-    Style { layer: style.layer.to_owned(), name: style.name.to_owned(), qml: style.qml, sld: style.sld }
+    Style {
+        layer: style.layer.to_owned(),
+        name: style.name.to_owned(),
+        qml: style.qml,
+        sld: style.sld,
+        description: style.description.to_owned(),
+        default: true,
+    }
 }
-

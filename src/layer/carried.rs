@@ -15,7 +15,6 @@ enum Nature {
     Integer,
     Real,
     Boolean,
-    Date,
     Text,
 }
 
@@ -58,7 +57,12 @@ pub(super) fn fields(results: &Results, taken: &Table) -> Vec<Field> {
                 .zip(results.sources)
                 .map(|(position, table)| position.map(|i| &table.fields[i].column))
                 .collect();
-            Field { name: unique, title: String::new(), description: String::new(), column: gathered(results, &columns) }
+            Field {
+                name: unique,
+                title: String::new(),
+                description: String::new(),
+                column: gathered(results, &columns),
+            }
         })
         .collect()
 }
@@ -94,10 +98,11 @@ fn gathered(results: &Results, columns: &[Option<&Column>]) -> Column {
         }
         Nature::Boolean => {
             let mut column = IntegerColumn::default();
-            cells().for_each(|(cell, _)| column.push(if let Cell::Boolean(b) = cell { Some(i64::from(b)) } else { None }));
+            cells()
+                .for_each(|(cell, _)| column.push(if let Cell::Boolean(b) = cell { Some(i64::from(b)) } else { None }));
             Column::Boolean(column)
         }
-        Nature::Empty | Nature::Date | Nature::Text => {
+        Nature::Empty | Nature::Text => {
             let mut column = TextColumn::default();
             for (cell, _) in cells() {
                 match cell {
@@ -139,7 +144,9 @@ fn number(cell: Cell, comma: bool) -> Option<f64> {
     match cell {
         Cell::Integer(v) => Some(v as f64),
         Cell::Real(v) => Some(v),
-        Cell::Text(text) if text.bytes().all(|b| matches!(b, b'0'..=b'9' | b'.' | b',' | b'-' | b'+' | b'e' | b'E')) => {
+        Cell::Text(text)
+            if text.bytes().all(|b| matches!(b, b'0'..=b'9' | b'.' | b',' | b'-' | b'+' | b'e' | b'E')) =>
+        {
             let value = if comma && text.contains(',') { text.replace(',', ".").parse() } else { text.parse::<f64>() };
             value.ok().filter(|v| v.is_finite())
         }

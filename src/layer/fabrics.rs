@@ -86,13 +86,33 @@ pub(super) fn table(results: &Results) -> Table {
         label.push(text.as_deref());
     }
     let mut table = Table::new("fabrics")
-        .with("domain_id", "Domain number", "Number of the domain, from 1", fabrics.iter().map(|p| Some(i64::from(domain(p).id.number()))).collect())
+        .with(
+            "domain_id",
+            "Domain number",
+            "Number of the domain, from 1",
+            fabrics.iter().map(|p| Some(i64::from(domain(p).id.number()))).collect(),
+        )
         .with("domain", "Domain", "Name of the domain", fabrics.iter().map(|p| Some(domain(p).name.as_str())).collect())
-        .with("structure", "Structure", "What was measured: bedding, joint, lineation …", fabrics.iter().map(|p| Some(p.structure.name.as_str())).collect())
+        .with(
+            "structure",
+            "Structure",
+            "What was measured: bedding, joint, lineation …",
+            fabrics.iter().map(|p| Some(p.structure.name.as_str())).collect(),
+        )
         .with("kind", "Kind", "planar (statistics work on poles) or linear", words(&|p| Some(p.structure.kind.word())))
         .with("n", "Readings", &described("n"), fabrics.iter().map(|p| count(p.fabric.n)).collect())
-        .with("n_stations", "Stations", &described("n_stations"), fabrics.iter().map(|p| count(p.fabric.n_stations)).collect())
-        .with("n_clipped", "Clipped weights", "Readings whose weight was cut to the cap; 0 where no exposure weights were asked for", fabrics.iter().map(|_| Some(0_i64)).collect())
+        .with(
+            "n_stations",
+            "Stations",
+            &described("n_stations"),
+            fabrics.iter().map(|p| count(p.fabric.n_stations)).collect(),
+        )
+        .with(
+            "n_clipped",
+            "Clipped weights",
+            "Readings whose weight was cut to the cap; 0 where no exposure weights were asked for",
+            fabrics.iter().map(|_| Some(0_i64)).collect(),
+        )
         .with("directed", "Directed", "True where the lines carry a sense", {
             let mut column = crate::table::IntegerColumn::default();
             fabrics.iter().for_each(|_| column.push(Some(0)));
@@ -103,7 +123,10 @@ pub(super) fn table(results: &Results) -> Table {
     }
     let symbols = fabrics.iter().map(|p| {
         let inclination = symbol_inclination(p)?;
-        Some(symbol::choose(&p.structure.name, p.structure.kind, inclination, crate::orientation::Polarity::Unknown).code)
+        Some(
+            symbol::choose(&p.structure.name, p.structure.kind, inclination, crate::orientation::Polarity::Unknown)
+                .code,
+        )
     });
     let symbols: Column = symbols.collect();
     table = table
@@ -118,12 +141,24 @@ pub(super) fn table(results: &Results) -> Table {
 
 /// Names that are not statistics of [`fabric::ALL`]: heading, meaning.
 const OTHERS: [(&str, &str, &str); 8] = [
-    ("rotation_true", "Rotation, true north", "Strike or trend of the mean; clockwise turn on a map whose top is true north, degrees"),
-    ("rotation_grid", "Rotation, grid north", "Clockwise turn of a north-up symbol of the mean on a map in this layer's CRS, degrees"),
+    (
+        "rotation_true",
+        "Rotation, true north",
+        "Strike or trend of the mean; clockwise turn on a map whose top is true north, degrees",
+    ),
+    (
+        "rotation_grid",
+        "Rotation, grid north",
+        "Clockwise turn of a north-up symbol of the mean on a map in this layer's CRS, degrees",
+    ),
     ("rotation_ccw", "Rotation, counter-clockwise", "The same turn counted counter-clockwise, degrees"),
     ("kent_kappa", "Kent kappa", "Concentration of the Kent distribution, directed readings only"),
     ("kent_beta", "Kent beta", "Ovalness of the Kent distribution, directed readings only"),
-    ("watson_kappa", "Watson kappa", "Concentration of the Watson distribution: positive about e1, negative about e3's girdle"),
+    (
+        "watson_kappa",
+        "Watson kappa",
+        "Concentration of the Watson distribution: positive about e1, negative about e3's girdle",
+    ),
     ("bingham_k2", "Bingham k2", "Bingham concentration of e2, with k1 = 0 for e1"),
     ("bingham_k3", "Bingham k3", "Bingham concentration of e3, with k1 = 0 for e1"),
 ];

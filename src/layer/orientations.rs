@@ -18,7 +18,8 @@ pub(super) fn table(results: &Results) -> Table {
 
     let mut station_id = TextColumn::default();
     let mut source_row = IntegerColumn::default();
-    let (mut source, mut structures, mut domain_name) = (WordColumn::default(), WordColumn::default(), WordColumn::default());
+    let (mut source, mut structures, mut domain_name) =
+        (WordColumn::default(), WordColumn::default(), WordColumn::default());
     let (mut symbols, mut labels) = (WordColumn::default(), WordColumn::default());
     let mut domain_id = IntegerColumn::default();
     for i in 0..n {
@@ -27,7 +28,8 @@ pub(super) fn table(results: &Results) -> Table {
         source_row.push(i64::try_from(readings.source_row[i]).ok());
         structures.push(Some(&structure(i).name));
         let inclination = readings.attitude[i].inclination().degrees();
-        symbols.push(Some(symbol::choose(&structure(i).name, structure(i).kind, inclination, readings.polarity[i]).code));
+        symbols
+            .push(Some(symbol::choose(&structure(i).name, structure(i).kind, inclination, readings.polarity[i]).code));
         labels.push(symbol::label(structure(i).kind, inclination).as_deref());
         domain_id.push(domain(i).map(|d| i64::from(d.id.number())));
         domain_name.push(domain(i).map(|d| d.name.as_str()));

@@ -14,7 +14,12 @@ pub(super) fn table(results: &Results) -> Table {
     let words = |get: fn(&crate::notice::Refusal) -> Option<&str>| results.refusals.iter().map(get).collect::<Column>();
     Table::new("refusals")
         .with("source", "Source", "The file or layer, as the area file names it", words(|r| Some(&r.source)))
-        .with("row", "Row", "Line number in a text source (the header is line 1), feature id elsewhere", Column::Integer(row))
+        .with(
+            "row",
+            "Row",
+            "Line number in a text source (the header is line 1), feature id elsewhere",
+            Column::Integer(row),
+        )
         .with("column", "Column", "The column at fault", words(|r| r.column.as_deref()))
         .with("value", "Value", "What stands there", Column::Text(value))
         .with("code", "Code", "The kind of fault", words(|r| Some(r.code)))
