@@ -96,6 +96,7 @@ fn one_source(
     if tally.misplaced * 2 > n {
         source.exchanged()?;
     }
+    oriented.notices.extend(source.datum_notice());
     Ok(tally)
 }
 
