@@ -108,6 +108,11 @@ impl<'a> Source<'a> {
         Ok(Self { rows, map, crs, to_map, north })
     }
 
+    /// What messages call the source's CRS.
+    pub fn label(&self) -> String {
+        self.crs.label()
+    }
+
     /// What to know about the shift between the source's datum and the map's; nothing where it is exact to a
     /// metre or there is none. Judged at the first position that has a place.
     pub fn datum_notice(&self) -> Option<Notice> {
@@ -279,11 +284,11 @@ impl<'a> Source<'a> {
         if swapped * 2 <= given.len() {
             return Ok(());
         }
-        let area = self.map.area_of_use().or(self.crs.area_of_use()).map_or("the map", |a| &a.name);
+        let area = self.map.area_of_use().or(self.crs.area_of_use()).map_or("the map".to_owned(), ToString::to_string);
         Err(CrsError::Swapped {
             swapped,
             stations: given.len(),
-            area: area.to_owned(),
+            area,
             x: given[first].x,
             y: given[first].y,
             row: self.rows.source_row[first],
