@@ -1,6 +1,7 @@
 //! Where on Earth a CRS is meant to be used.
 
 use geo_types::Coord;
+use std::fmt;
 
 /// Box in degrees of longitude and latitude; `west` is greater than `east` where it crosses the date line.
 #[derive(Debug, Clone, PartialEq)]
@@ -22,6 +23,14 @@ const EARTH_RADIUS_KM: f64 = 6371.0088;
 
 /// Slack on each edge, degrees (about 10 cm), for positions that came through a transformation.
 const SLACK: f64 = 1e-6;
+
+impl fmt::Display for AreaOfUse {
+    /// The box, since names can list half the countries of the world.
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let Self { west, south, east, north, .. } = self;
+        write!(f, "longitude {west} to {east}, latitude {south} to {north}")
+    }
+}
 
 impl AreaOfUse {
     /// Degrees east of the western edge, [0, 360).

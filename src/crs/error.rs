@@ -64,7 +64,7 @@ pub enum CrsError {
     },
     /// Coordinates in the wrong order.
     #[error(
-        "{swapped} of {stations} positions lie outside {area}, but would lie inside with x and y exchanged: \
+        "{swapped} of {stations} positions lie outside the area of use ({area}), but would lie inside with x and y exchanged: \
          {x} and {y} (row {row}) look like {}",
         if *.geographic { "latitude, longitude" } else { "northing, easting" }
     )]

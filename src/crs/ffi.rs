@@ -258,12 +258,21 @@ impl Object {
     }
 }
 
+/// How an operation gets from one datum to another at some place.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) struct Way {
+    pub name: String,
+    /// The datums are taken for one because nobody published a shift (or its grid is not installed).
+    pub ballpark: bool,
+    /// Metres, where stated.
+    pub accuracy: Option<f64>,
+}
+
 /// A way from one CRS to another, easting or longitude first on both sides. Owns its context, so it may
 /// move between threads.
 pub(super) struct Operation {
     pj: NonNull<PJ>,
-    /// Held for `pj` alone.
-    _context: Context,
+    context: Context,
 }
 
 // SAFETY: the operation is the only user of its context (see `from_objects`), and PROJ allows a context and
@@ -310,7 +319,7 @@ impl Operation {
         };
         drop((from, to));
         match Rc::try_unwrap(context) {
-            Ok(context) => Ok(Self { pj, _context: context }),
+            Ok(context) => Ok(Self { pj, context }),
             Err(shared) => {
                 // SAFETY: `pj` is ours and not used again.
                 unsafe { proj_destroy(pj.as_ptr()) };
@@ -327,6 +336,31 @@ impl Operation {
     /// The same, backwards.
     pub fn inverse(&mut self, coords: &mut [Coord<f64>]) {
         self.run(PJ_DIRECTION_PJ_INV, coords);
+    }
+
+    /// What PROJ says of the way it takes for one coordinate; `None` where that cannot be transformed.
+    pub fn way(&mut self, mut at: Coord<f64>) -> Option<Way> {
+        self.forward(std::slice::from_mut(&mut at));
+        if !at.x.is_finite() {
+            return None;
+        }
+        let context = self.context.raw();
+        // SAFETY: the operation and its context are live; the object returned is ours and freed here, once,
+        // after its name was copied.
+        unsafe {
+            let used = proj_trans_get_last_used_operation(self.pj.as_ptr());
+            if used.is_null() {
+                return None;
+            }
+            let accuracy = proj_coordoperation_get_accuracy(context, used);
+            let way = Way {
+                name: text(proj_get_name(used)).unwrap_or_default(),
+                ballpark: proj_coordoperation_has_ballpark_transformation(context, used) == 1,
+                accuracy: (accuracy >= 0.0).then_some(accuracy),
+            };
+            proj_destroy(used);
+            Some(way)
+        }
     }
 
     fn run(&mut self, direction: PJ_DIRECTION, coords: &mut [Coord<f64>]) {

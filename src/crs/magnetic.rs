@@ -1,4 +1,9 @@
 //! Declination from a geomagnetic model.
+//!
+//! Both crates were held against reference libraries at 3000 random places and dates with a horizontal field
+//! above 6000 nT: the WMM within 0.0001 degrees of pygeomag 1.1.0; the IGRF (generation 13) within 0.001 degrees of
+//! ppigrf 2.1.0 (generation 14) up to 2014 and within 0.012 degrees from 2015 to 2019, whose coefficients the later
+//! generation revised. The models themselves claim no better than about 0.3 degrees.
 
 use igrf::declination as igrf_field;
 use std::ops::Range;

@@ -45,7 +45,6 @@ pub fn orient(sources: Vec<Measurements>, map: &MapCrs, progress: &dyn Progress)
     for measurements in &sources {
         let tally = one_source(measurements, map, progress, &mut oriented)
             .map_err(|cause| cause.in_source(&measurements.source))?;
-        oriented.notices.extend(tally.source_notices(measurements, map));
         whole.join(&tally);
     }
     oriented.notices.extend(whole.map_notices(map));
@@ -96,6 +95,8 @@ fn one_source(
     if tally.misplaced * 2 > n {
         source.exchanged()?;
     }
+    oriented.notices.extend(source.datum_notice());
+    oriented.notices.extend(tally.source_notices(measurements, &source.label(), map));
     Ok(tally)
 }
 

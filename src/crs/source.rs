@@ -5,6 +5,7 @@ use super::error::CrsError;
 use super::magnetic::{MODEL_YEARS, field, model_name};
 use super::north::LocalNorth;
 use super::transform::Transformer;
+use crate::notice::{Notice, Place};
 use crate::orientation::{Attitude, Bearing, GridAzimuth, MagneticAzimuth, TrueAzimuth};
 use crate::station::{Declination, Measurements, North};
 use geo_types::Coord;
@@ -105,6 +106,29 @@ impl<'a> Source<'a> {
             }
         };
         Ok(Self { rows, map, crs, to_map, north })
+    }
+
+    /// What messages call the source's CRS.
+    pub fn label(&self) -> String {
+        self.crs.label()
+    }
+
+    /// What to know about the shift between the source's datum and the map's; nothing where it is exact to a
+    /// metre or there is none. Judged at the first position that has a place.
+    pub fn datum_notice(&self) -> Option<Notice> {
+        let way = self.to_map.way(&self.rows.position)?;
+        let (from, to, file) = (self.crs.label(), self.map.label(), Place::file(&self.rows.source));
+        if way.ballpark {
+            let message = format!(
+                "positions went from {from} to {to} without a datum shift, because none is known here: they may be \
+                 off by up to some hundred metres"
+            );
+            let hint = "install the datum grids for PROJ, or give positions on the map's datum";
+            return Some(Notice::warning("datum-shift-unknown", file, message).hint(hint));
+        }
+        let metres = way.accuracy.filter(|&metres| metres > 1.0)?;
+        let message = format!("positions went from {from} to {to} by \"{}\", good to {metres} m", way.name);
+        Some(Notice::info("datum-shift", file, message))
     }
 
     /// Settles a range of rows, on this thread.
@@ -260,11 +284,11 @@ impl<'a> Source<'a> {
         if swapped * 2 <= given.len() {
             return Ok(());
         }
-        let area = self.map.area_of_use().or(self.crs.area_of_use()).map_or("the map", |a| &a.name);
+        let area = self.map.area_of_use().or(self.crs.area_of_use()).map_or("the map".to_owned(), ToString::to_string);
         Err(CrsError::Swapped {
             swapped,
             stations: given.len(),
-            area: area.to_owned(),
+            area,
             x: given[first].x,
             y: given[first].y,
             row: self.rows.source_row[first],

@@ -87,15 +87,14 @@ impl Tally {
         self.latitude.join(&other.latitude);
     }
 
-    /// What concerns one source.
-    pub fn source_notices(&self, source: &Measurements, map: &MapCrs) -> Vec<Notice> {
+    /// What concerns one source, whose CRS is called `crs`.
+    pub fn source_notices(&self, source: &Measurements, crs: &str, map: &MapCrs) -> Vec<Notice> {
         let file = || Place::file(&source.source);
         let mut notices = Vec::new();
         if self.grid.n > 0 {
             let Span { n, low, high } = self.grid;
             let message = format!(
-                "{n} azimuths from grid north became true by adding the convergence of {}: {low:.2} to {high:.2} degrees",
-                source.crs
+                "{n} azimuths from grid north became true by adding the convergence of {crs}: {low:.2} to {high:.2} degrees"
             );
             notices.push(Notice::info("convergence-added", file(), message));
         }
@@ -121,7 +120,7 @@ impl Tally {
                 self.outside.n,
                 source.position.len(),
                 map.label(),
-                area.name,
+                area,
                 self.outside.high
             );
             notices.push(

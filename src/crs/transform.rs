@@ -2,6 +2,7 @@
 
 use super::definition::MapCrs;
 use super::error::CrsError;
+use super::ffi::Way;
 use super::pool::{Pool, Recipe};
 use geo::MapCoordsInPlace;
 use geo_types::{Coord, Geometry};
@@ -64,6 +65,11 @@ impl Transformer {
         let next = Cell::new(0);
         geometry.map_coords_in_place(|_| coords[next.replace(next.get() + 1)]);
         failed
+    }
+
+    /// How the first of these coordinates that has a place gets there; `None` where both CRSs are one.
+    pub(super) fn way(&self, coords: &[Coord<f64>]) -> Option<Way> {
+        self.pool.as_ref()?.with(|operation| coords.iter().find_map(|&at| operation.way(at)))
     }
 
     /// One chunk, on this thread; what fails becomes NaN.

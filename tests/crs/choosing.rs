@@ -43,7 +43,7 @@ fn a_projected_source_decides() {
     let grid = bedding("EPSG:2193", North::True, vec![at(1_600_000.0, 5_000_000.0)]);
     let reversed = bedding("EPSG:2053", North::True, vec![at(0.0, 2_900_000.0)]);
     let code = |sources: &[_]| default_map_crs(sources).unwrap().0.code_or_wkt().to_owned();
-    assert_eq!(code(&[grid.clone()]), "EPSG:2193");
+    assert_eq!(code(std::slice::from_ref(&grid)), "EPSG:2193");
     assert_eq!(code(&[geographic, grid.clone()]), "EPSG:2193");
     // Axes to the west and south carry no map: Lo29 lies in zones 35 and 36 south.
     assert_eq!(code(&[reversed]), "EPSG:32735");

@@ -153,6 +153,23 @@ fn order_is_kept_on_any_number_of_threads() {
     assert!(r.source_row[..r.len() - 5].is_sorted() && one.refusals.iter().all(|f| f.code == "no-date"));
 }
 
+// Datum shifts of the EPSG registry: ED50 to WGS 84 has some, good to metres; the datum of a PROJ string that
+// names an ellipsoid alone has none.
+#[test]
+fn a_rough_datum_shift_is_said() {
+    let map = MapCrs::parse("EPSG:32633").unwrap();
+    let notices = |crs: &str| {
+        let source = bedding(crs, North::True, vec![at(f64::NAN, 0.0), at(500_000.0, 5_000_000.0)]);
+        orient(vec![source], &map, &Silent).unwrap().notices
+    };
+    let [shift] = &notices("EPSG:23033")[..] else { panic!("{:?}", notices("EPSG:23033")) };
+    assert_eq!((shift.code, shift.severity), ("datum-shift", Severity::Info));
+    assert!(shift.message.contains("ED50 to WGS 84"), "{}", shift.message);
+    let [unknown] = &notices("+proj=utm +zone=33 +ellps=intl")[..] else { panic!("one notice") };
+    assert_eq!((unknown.code, unknown.severity), ("datum-shift-unknown", Severity::Warning));
+    assert!(notices("EPSG:32633").is_empty() && notices("EPSG:25833").is_empty());
+}
+
 #[derive(Default)]
 struct Counted {
     total: AtomicU64,
