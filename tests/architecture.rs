@@ -24,10 +24,9 @@ const FLOORS: [(&str, u8); 14] = [
 ];
 
 /// Crates that may be named in one place only.
-const WALLS: [(&str, &str); 8] = [
+const WALLS: [(&str, &str); 7] = [
     ("gdal", "src/format/ogr"),
     ("rusqlite", "src/format/gpkg"),
-    ("proj", "src/crs"),
     ("proj_sys", "src/crs"),
     ("world_magnetic_model", "src/crs"),
     ("igrf", "src/crs"),
