@@ -326,6 +326,20 @@ fn planes_and_lines_share_columns_and_the_structure_decides() {
 }
 
 #[test]
+fn a_kind_is_taken_from_columns_only_where_they_leave_no_doubt() {
+    let columns = |header: &str, other: &str| {
+        let out = read(&format!("x|y|type|{header}\n1|2|crack|30|20\n1|2|{other}|30|20"), &spec());
+        let kind = out.measurements.structures.iter().find(|s| s.name == "crack").map(|s| s.kind);
+        (kind, told(&out, "structure-kind-assumed").is_some())
+    };
+    assert_eq!(columns("strike|dip", "bedding"), (Some(Kind::Planar), true));
+    assert_eq!(columns("trend|plunge", "lineation"), (Some(Kind::Linear), true));
+    assert_eq!(columns("strike|dip", "lineation"), (None, false));
+    assert_eq!(columns("azimuth|dip", "bedding"), (None, false));
+    assert_eq!(columns("dip_direction|dip", "bedding"), (None, false));
+}
+
+#[test]
 fn structures_are_mapped_by_the_user_first() {
     let mut s = spec();
     s.structures.insert("J".into(), "joint".into());

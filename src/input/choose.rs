@@ -52,7 +52,7 @@ pub(super) struct Columns {
     pub polarity: Option<usize>,
     pub weight: Option<usize>,
     pub declination: Option<usize>,
-    /// The strike column is one by its name or by the declared notation, not just "azimuth".
+    /// The strike column is one by its name or by the key `strike`; "azimuth" may hold trends too.
     pub strike_by_name: bool,
     pub used: Vec<UsedColumn>,
 }
@@ -291,7 +291,7 @@ fn azimuth(chooser: &mut Chooser<'_>, out: &mut Columns, i: usize, named: bool) 
         Meaning::DipDirection => out.dip_direction.replace(i),
         Meaning::Trend => out.trend.replace(i),
         _ => {
-            out.strike_by_name |= declared != Notation::Auto || Meaning::Strike.rank(name).is_some();
+            out.strike_by_name |= Meaning::Strike.rank(name).is_some();
             out.strike.replace((i, declared)).map(|(old, _)| old)
         }
     };

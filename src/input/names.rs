@@ -72,7 +72,7 @@ impl Meaning {
             ],
             Self::Structure => &[
                 &["structure", "structuretype", "structtype", "struct", "struktur", "estructura", "struttura"],
-                &["featuredescription", "featuredesc", "featdesc", "featuretype", "feattype", "feature"],
+                &["featuretype", "feattype", "feature"],
                 &["featurecode", "featcode"],
                 &["measurementtype", "meastype", "observationtype", "obstype", "planetype", "fabric", "gefuege"],
                 &["type", "kind", "typ", "tipo", "code"],
@@ -152,6 +152,10 @@ impl Meaning {
     /// Where the name of a column can mean this: how good it is, 0 the best.
     pub fn rank(self, column: &str) -> Option<usize> {
         let name = normal(column);
+        // Surveys append the name of their coding scheme.
+        if self == Self::Structure && (name.starts_with("featdesc") || name.starts_with("featuredesc")) {
+            return Some(1);
+        }
         self.spellings().iter().position(|group| group.iter().any(|s| fits(column, &name, s)))
     }
 }
@@ -211,6 +215,7 @@ mod tests {
             ("DipEstimat", Meaning::Dip, None),
             ("DipEstimat", Meaning::DipDirection, None),
             ("FeatureCod", Meaning::Structure, Some(2)),
+            ("FeatDescGA", Meaning::Structure, Some(1)),
             ("FeatureC_1", Meaning::Structure, None),
             ("ObsType", Meaning::Structure, Some(3)),
             ("Streichen", Meaning::Strike, Some(0)),
