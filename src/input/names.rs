@@ -160,7 +160,8 @@ impl Meaning {
     }
 }
 
-/// A unit may follow the name (`dip_deg`). Shapefiles cut names at ten characters, so a name of ten may be the start of a longer spelling.
+/// A unit may follow the name (`dip_deg`). Shapefiles cut names at ten characters, so a name of ten may be the start of
+/// a longer spelling.
 fn fits(column: &str, name: &str, spelling: &str) -> bool {
     let bare = name.strip_suffix("degrees").or_else(|| name.strip_suffix("deg"));
     name == spelling
