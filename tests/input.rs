@@ -223,6 +223,9 @@ fn contradictions_are_refused_with_both_values() {
     assert_eq!(angles(&out), [(45.0, 0.0), (45.0, 45.0), (45.0, 45.0), (45.0, 45.0)]);
     let out = read("x|y|strike|dipdir|dip\n1|2|45|315|45", &bedding(Notation::RightHand));
     assert_eq!(codes(&out), [(2, "strike-contradicts-dip-direction")]);
+    let text = "x|y|strike|dipdir|dip\n1|2|45|315|45\n1|2|45||45\n1|2||315|45";
+    let out = read(text, &bedding(Notation::DipDirection));
+    assert_eq!((angles(&out), codes(&out)), (vec![(225.0, 45.0), (225.0, 45.0)], vec![(3, "dip-quadrant-missing")]));
     let out = read("x|y|attitude\n1|2|N45E 45NE\n1|2|\n1|2|tbd", &auto);
     assert_eq!(codes(&out), [(2, "dip-quadrant-contradicts"), (3, "attitude-missing"), (4, "attitude-unreadable")]);
 }
@@ -270,6 +273,9 @@ fn a_table_that_cannot_be_read_says_what_is_missing() {
         assert!(e.to_string().starts_with("stations.csv: ") && e.to_string().contains(words), "{e}");
         assert!(e.hint().is_some(), "{e}");
     }
+    let mut unread = auto.clone();
+    unread.columns.date = Some("day".into());
+    assert_eq!(fails("x|y|strike|dip\n1|2|3|4", &unread).fault.code(), "no-such-column");
     let mut wrong = auto.clone();
     wrong.columns.dip = Some("dipp".into());
     let e = fails("x|y|strike|dip\n1|2|3|4", &wrong);
@@ -292,6 +298,10 @@ fn shapes_beat_columns_and_the_users_crs_beats_the_sources() {
     assert!(told(&out, "crs-overridden").unwrap().contains("EPSG:28353"));
     let own = readings(&table, &StationSpec { crs: None, ..bedding(Notation::Auto) }).unwrap();
     assert_eq!(own.measurements.crs, "EPSG:28353");
+    table.crs = Some("EPSG:4326".into());
+    table.shapes = Shapes::Points(vec![geo_types::Coord { x: 7.0, y: 91.0 }, geo_types::Coord { x: 7.0, y: 46.0 }]);
+    let degrees = readings(&table, &StationSpec { crs: None, ..bedding(Notation::Auto) }).unwrap();
+    assert_eq!(codes(&degrees), [(2, "position-out-of-range")]);
     // Both kinds of columns side by side: the CRS tells which pair is meant.
     let text = "easting|northing|lon|lat|strike|dip\n430000|5210000|15|47|45|45";
     assert_eq!(read(text, &bedding(Notation::Auto)).measurements.position[0].x, 430_000.0);
@@ -323,6 +333,20 @@ fn planes_and_lines_share_columns_and_the_structure_decides() {
     assert_eq!(angles(&rake).len(), 3);
     assert!((angles(&rake)[0].0 - 90.0).abs() < 1e-9 && (angles(&rake)[0].1 - 60.0).abs() < 1e-9);
     assert!(told(&rake, "rake-unused").is_some());
+}
+
+#[test]
+fn a_kind_is_taken_from_columns_only_where_they_leave_no_doubt() {
+    let columns = |header: &str, other: &str| {
+        let out = read(&format!("x|y|type|{header}\n1|2|crack|30|20\n1|2|{other}|30|20"), &spec());
+        let kind = out.measurements.structures.iter().find(|s| s.name == "crack").map(|s| s.kind);
+        (kind, told(&out, "structure-kind-assumed").is_some())
+    };
+    assert_eq!(columns("strike|dip", "bedding"), (Some(Kind::Planar), true));
+    assert_eq!(columns("trend|plunge", "lineation"), (Some(Kind::Linear), true));
+    assert_eq!(columns("strike|dip", "lineation"), (None, false));
+    assert_eq!(columns("azimuth|dip", "bedding"), (None, false));
+    assert_eq!(columns("dip_direction|dip", "bedding"), (None, false));
 }
 
 #[test]

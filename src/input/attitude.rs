@@ -44,7 +44,8 @@ struct Count {
 pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> Evidence {
     let texts = columns.attitude;
     let in_name = columns.strike.map(|(_, notation)| notation).unwrap_or(declared);
-    let mut out = Evidence { notation: in_name, assumed: false, declared, order: Order::Unknown };
+    let known = if declared == Notation::Auto { in_name } else { declared };
+    let mut out = Evidence { notation: known, assumed: false, declared, order: Order::Unknown };
     let needed = texts.is_some() || in_name == Notation::Auto && columns.strike.is_some();
     let count = if needed { count(table, columns) } else { Count::default() };
     out.order = match (count.azimuth_first, count.inclination_first) {
@@ -52,7 +53,7 @@ pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> 
         (0, 1..) => Order::InclinationFirst,
         _ => Order::Unknown,
     };
-    if in_name == Notation::Auto {
+    if known == Notation::Auto {
         out.notation = if count.quadrants > 0 || 2 * count.letters > count.rows {
             Notation::Quadrant
         } else if texts.is_some() && 2 * count.arrows > count.rows

@@ -1,7 +1,7 @@
 //! Which column is what: as the user says, else by its name.
 
 use super::names::{Meaning, PAIRS, half};
-use super::spec::{DeclinationSpec, NorthReference, StationSpec, StructureSpec};
+use super::spec::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
 use super::{InputFault, place};
 use crate::notice::{Notice, Place};
 use crate::orientation::notation::Notation;
@@ -21,8 +21,18 @@ pub struct UsedColumn {
 /// Where positions come from.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(super) enum Position {
-    Shapes,
+    Shapes { degrees: bool },
     Columns { x: usize, y: usize, degrees: bool },
+}
+
+impl Position {
+    /// The same, held to the range of longitude and latitude.
+    pub fn in_degrees(self) -> Self {
+        match self {
+            Self::Shapes { .. } => Self::Shapes { degrees: true },
+            Self::Columns { x, y, .. } => Self::Columns { x, y, degrees: true },
+        }
+    }
 }
 
 /// Where structures come from.
@@ -52,7 +62,7 @@ pub(super) struct Columns {
     pub polarity: Option<usize>,
     pub weight: Option<usize>,
     pub declination: Option<usize>,
-    /// The strike column is one by its name or by the declared notation, not just "azimuth".
+    /// The strike column is one by its name or by the key `strike`; "azimuth" may hold trends too.
     pub strike_by_name: bool,
     pub used: Vec<UsedColumn>,
 }
@@ -129,7 +139,7 @@ impl Chooser<'_> {
         let keys = self.spec.columns.clone();
         let missing = |table, keys| InputFault::NoColumn { what: "where a station is", keys, columns: names(table) };
         if !matches!(self.table.shapes, Shapes::None) {
-            return Ok(Position::Shapes);
+            return Ok(Position::Shapes { degrees: false });
         }
         match (&keys.x, &keys.y) {
             (Some(x), Some(y)) => {
@@ -189,6 +199,11 @@ impl Chooser<'_> {
     }
 }
 
+/// How a strike beside a dip direction is read: where the latter is what counts, a strike alone tells no side.
+fn of_strike(declared: Notation) -> Notation {
+    if declared == Notation::DipDirection { Notation::Quadrant } else { declared }
+}
+
 /// What a column's name says about a strike.
 fn notation_in_name(name: &str) -> Option<Notation> {
     let name = super::value::normal(name);
@@ -218,7 +233,7 @@ fn attitude(chooser: &mut Chooser<'_>, out: &mut Columns) -> Result<(), InputFau
         }
     }
     if let Some(name) = &keys.strike {
-        out.strike = Some((chooser.named("strike", name)?, declared));
+        out.strike = Some((chooser.named("strike", name)?, of_strike(declared)));
         out.strike_by_name = true;
     }
     if let Some(name) = &keys.azimuth {
@@ -232,7 +247,7 @@ fn attitude(chooser: &mut Chooser<'_>, out: &mut Columns) -> Result<(), InputFau
         }
         if let Some(i) = strike {
             chooser.note(i, "strike", "strike");
-            out.strike = Some((i, declared));
+            out.strike = Some((i, of_strike(declared)));
             out.strike_by_name = true;
         }
         if let Some(i) = dip_direction {
@@ -291,7 +306,7 @@ fn azimuth(chooser: &mut Chooser<'_>, out: &mut Columns, i: usize, named: bool) 
         Meaning::DipDirection => out.dip_direction.replace(i),
         Meaning::Trend => out.trend.replace(i),
         _ => {
-            out.strike_by_name |= declared != Notation::Auto || Meaning::Strike.rank(name).is_some();
+            out.strike_by_name |= Meaning::Strike.rank(name).is_some();
             out.strike.replace((i, declared)).map(|(old, _)| old)
         }
     };
@@ -378,8 +393,45 @@ pub(super) fn columns(table: &Table, spec: &StationSpec, notices: &mut Vec<Notic
         }
         _ => {}
     }
+    // A name that is not needed here must still be right.
+    for (key, name) in named_keys(&spec.columns) {
+        if let Some(name) = name.as_deref().filter(|n| table.position(n).is_none()) {
+            chooser.named(key, name)?;
+        }
+    }
+    if spec.north != Some(NorthReference::Magnetic)
+        && (spec.declination.is_some() || spec.columns.declination.is_some())
+    {
+        chooser.notices.push(
+            Notice::warning(
+                "declination-unused",
+                Place::file(&spec.file),
+                "a declination is given, but the azimuths are not said to be magnetic; it was left aside",
+            )
+            .hint("say north = \"magnetic\" under [stations]"),
+        );
+    }
     out.used = chooser.used;
     Ok(out)
+}
+
+fn named_keys(c: &ColumnSpec) -> [(&'static str, &Option<String>); 14] {
+    [
+        ("x", &c.x),
+        ("y", &c.y),
+        ("z", &c.z),
+        ("date", &c.date),
+        ("azimuth", &c.azimuth),
+        ("strike", &c.strike),
+        ("dip_direction", &c.dip_direction),
+        ("trend", &c.trend),
+        ("dip", &c.dip),
+        ("plunge", &c.plunge),
+        ("dip_quadrant", &c.dip_quadrant),
+        ("attitude", &c.attitude),
+        ("rake", &c.rake),
+        ("declination", &c.declination),
+    ]
 }
 
 /// Cells are read by row without further looks, so all columns must have all rows.

@@ -48,8 +48,11 @@ pub struct InputReadings {
 pub fn readings(table: &Table, spec: &StationSpec) -> Result<InputReadings, InputError> {
     let fail = |fault| InputError { file: spec.file.clone(), fault };
     let mut notices = Vec::new();
-    let columns = choose::columns(table, spec, &mut notices).map_err(fail)?;
+    let mut columns = choose::columns(table, spec, &mut notices).map_err(fail)?;
     let crs = place::crs(table, spec, &columns, &mut notices).map_err(fail)?;
+    if place::is_geographic(&crs) {
+        columns.position = columns.position.in_degrees();
+    }
     let north = north(spec, &columns, &mut notices).map_err(fail)?;
     let dates = match north {
         North::Magnetic(Declination::Model) => {
@@ -77,7 +80,7 @@ fn north(spec: &StationSpec, columns: &choose::Columns, notices: &mut Vec<Notice
         Some(NorthReference::True) => North::True,
         Some(NorthReference::Grid) => North::Grid,
         Some(NorthReference::Magnetic) => North::Magnetic(match &spec.declination {
-            Some(DeclinationSpec::Constant(d)) if !(d.abs() <= 180.0) => {
+            Some(DeclinationSpec::Constant(d)) if !d.is_finite() || d.abs() > 180.0 => {
                 return Err(InputFault::DeclinationRange(*d));
             }
             Some(DeclinationSpec::Constant(d)) => Declination::Constant(*d),

@@ -72,7 +72,7 @@ impl Meaning {
             ],
             Self::Structure => &[
                 &["structure", "structuretype", "structtype", "struct", "struktur", "estructura", "struttura"],
-                &["featuredescription", "featuredesc", "featdesc", "featuretype", "feattype", "feature"],
+                &["featuretype", "feattype", "feature"],
                 &["featurecode", "featcode"],
                 &["measurementtype", "meastype", "observationtype", "obstype", "planetype", "fabric", "gefuege"],
                 &["type", "kind", "typ", "tipo", "code"],
@@ -152,11 +152,16 @@ impl Meaning {
     /// Where the name of a column can mean this: how good it is, 0 the best.
     pub fn rank(self, column: &str) -> Option<usize> {
         let name = normal(column);
+        // Surveys append the name of their coding scheme.
+        if self == Self::Structure && (name.starts_with("featdesc") || name.starts_with("featuredesc")) {
+            return Some(1);
+        }
         self.spellings().iter().position(|group| group.iter().any(|s| fits(column, &name, s)))
     }
 }
 
-/// A unit may follow the name (`dip_deg`). Shapefiles cut names at ten characters, so a name of ten may be the start of a longer spelling.
+/// A unit may follow the name (`dip_deg`). Shapefiles cut names at ten characters, so a name of ten may be the start of
+/// a longer spelling.
 fn fits(column: &str, name: &str, spelling: &str) -> bool {
     let bare = name.strip_suffix("degrees").or_else(|| name.strip_suffix("deg"));
     name == spelling
@@ -211,6 +216,7 @@ mod tests {
             ("DipEstimat", Meaning::Dip, None),
             ("DipEstimat", Meaning::DipDirection, None),
             ("FeatureCod", Meaning::Structure, Some(2)),
+            ("FeatDescGA", Meaning::Structure, Some(1)),
             ("FeatureC_1", Meaning::Structure, None),
             ("ObsType", Meaning::Structure, Some(3)),
             ("Streichen", Meaning::Strike, Some(0)),

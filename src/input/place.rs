@@ -12,7 +12,8 @@ use geo_types::{Coord, Geometry};
 /// Farther from the origin than any map grid reaches, in metres. Chosen here: twice the Earth's circumference.
 pub(super) const FARTHEST: f64 = 8.0e7;
 
-/// True where a CRS by its code or WKT is one of longitude and latitude. Only used to choose between two pairs of columns.
+/// True where a CRS by its code or WKT is one of longitude and latitude. Unknown codes are taken for map grids,
+/// so this may only choose between columns and narrow a range.
 pub(super) fn is_geographic(crs: &str) -> bool {
     let upper = crs.trim().to_uppercase();
     matches!(
@@ -49,7 +50,7 @@ pub(super) fn crs(
     }
 }
 
-/// The position of a row; columns of longitude and latitude are held to their range.
+/// The position of a row; longitude and latitude are held to their range.
 pub(super) fn position(table: &Table, columns: &Columns, row: usize) -> Result<Coord<f64>, (Option<usize>, RowFault)> {
     let whole = |fault| (None, fault);
     match (columns.position, &table.shapes) {
@@ -67,28 +68,33 @@ pub(super) fn position(table: &Table, columns: &Columns, row: usize) -> Result<C
                     Ok(Some(v)) => Ok(v),
                 }
             };
-            let (high_x, high_y) = if degrees { (360.0, 90.0) } else { (FARTHEST, FARTHEST) };
+            let (high_x, high_y) = highest(degrees);
             Ok(Coord { x: read(x, high_x)?, y: read(y, high_y)? })
         }
-        (Position::Shapes, Shapes::Points(points)) => point(points[row]).map_err(whole),
-        (Position::Shapes, Shapes::Any(shapes)) => match &shapes[row] {
+        (Position::Shapes { degrees }, Shapes::Points(points)) => point(points[row], degrees).map_err(whole),
+        (Position::Shapes { degrees }, Shapes::Any(shapes)) => match &shapes[row] {
             None => Err(whole(RowFault::NoPosition)),
-            Some(Geometry::Point(p)) => point(p.0).map_err(whole),
-            Some(Geometry::MultiPoint(points)) if points.0.len() == 1 => point(points.0[0].0).map_err(whole),
+            Some(Geometry::Point(p)) => point(p.0, degrees).map_err(whole),
+            Some(Geometry::MultiPoint(points)) if points.0.len() == 1 => point(points.0[0].0, degrees).map_err(whole),
             Some(_) => Err(whole(RowFault::NotAPoint)),
         },
-        (Position::Shapes, Shapes::None) => Err(whole(RowFault::NoPosition)),
+        (Position::Shapes { .. }, Shapes::None) => Err(whole(RowFault::NoPosition)),
     }
 }
 
-fn point(at: Coord<f64>) -> Result<Coord<f64>, RowFault> {
+fn point(at: Coord<f64>, degrees: bool) -> Result<Coord<f64>, RowFault> {
     if at.x.is_nan() || at.y.is_nan() {
         return Err(RowFault::NoPosition);
     }
-    for v in [at.x, at.y] {
-        if v.is_nan() || v.abs() > FARTHEST {
-            return Err(RowFault::PositionRange { value: v, high: FARTHEST });
+    let (high_x, high_y) = highest(degrees);
+    for (value, high) in [(at.x, high_x), (at.y, high_y)] {
+        if value.abs() > high {
+            return Err(RowFault::PositionRange { value, high });
         }
     }
     Ok(at)
+}
+
+fn highest(degrees: bool) -> (f64, f64) {
+    if degrees { (360.0, 90.0) } else { (FARTHEST, FARTHEST) }
 }

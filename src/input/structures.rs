@@ -187,11 +187,13 @@ enum Fallback {
 
 fn fallback(columns: &Columns, lines_too: bool) -> Fallback {
     let plane = columns.strike_by_name || columns.dip_direction.is_some() || columns.quadrant.is_some();
+    // Lines are often entered as "dip direction" and "dip"; nobody gives a line a strike.
+    let strike = columns.strike_by_name || columns.quadrant.is_some();
     match (columns.trend.is_some(), columns.strike.is_some() || columns.dip_direction.is_some()) {
         (true, false) => Fallback::Linear,
         (true, true) if plane => Fallback::ByRow,
         // Where known lines share the columns, the columns tell nothing.
-        (false, true) if plane && !lines_too => Fallback::Planar,
+        (false, true) if strike && !lines_too => Fallback::Planar,
         _ => Fallback::Unknown,
     }
 }

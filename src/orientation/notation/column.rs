@@ -66,8 +66,8 @@ pub fn dip_cell(quantity: Quantity, text: &str) -> Result<DipCell, NotationError
     let other = || machine_number(quantity, text).map(|degrees| DipCell { degrees, side: None });
     let Some(found) = cell_tokens(text) else { return other() };
     match found.as_slice() {
-        [Token::Horizontal] => return Ok(DipCell { degrees: 0.0, side: None }),
-        [Token::Vertical] => return Ok(DipCell { degrees: 90.0, side: None }),
+        [Token::Horizontal] => Ok(DipCell { degrees: 0.0, side: None }),
+        [Token::Vertical] => Ok(DipCell { degrees: 90.0, side: None }),
         items => match blank_parted(items) {
             Some((num, used)) => match items[used..] {
                 [] => Ok(DipCell { degrees: num.degrees, side: None }),

@@ -212,6 +212,6 @@ mod tests {
         }
         assert_eq!(line_from_rake(p, -30.0, None).unwrap_err().code(), "rake-out-of-range");
         assert_eq!(line_from_rake(p, 30.0, compass_point("E")).unwrap_err().code(), "rake-end-contradicts");
-        assert_eq!(line_from_rake(p, 99.0, None).is_ok(), true);
+        assert!(line_from_rake(p, 99.0, None).is_ok());
     }
 }

@@ -43,16 +43,16 @@ const UNKNOWN: [&str; 10] =
 /// things in different files and are refused (U is "upright" here and "unknown" there).
 pub fn polarity(text: &str) -> Result<Polarity, NotationError> {
     // Compared without building a lower-case copy: this runs once per row.
-    let same = |word: &&str| {
+    let same = |word: &&'static str| {
         let mut theirs =
             text.trim().bytes().map(|b| if matches!(b, b'-' | b'_') { b' ' } else { b.to_ascii_lowercase() });
         word.bytes().all(|b| theirs.next() == Some(b)) && theirs.next().is_none()
     };
-    if UPRIGHT.iter().any(|w| same(w)) {
+    if UPRIGHT.iter().any(same) {
         Ok(Polarity::Upright)
-    } else if OVERTURNED.iter().any(|w| same(w)) {
+    } else if OVERTURNED.iter().any(same) {
         Ok(Polarity::Overturned)
-    } else if UNKNOWN.iter().any(|w| same(w)) {
+    } else if UNKNOWN.iter().any(same) {
         Ok(Polarity::Unknown)
     } else {
         Err(NotationError::Polarity(text.to_owned()))

@@ -53,7 +53,8 @@ impl Tokens {
     }
 }
 
-/// The text in plain lower-case ASCII: `*` for degrees, `>` for an arrow. `None` for a character that means nothing here.
+/// The text in plain lower-case ASCII: `*` for degrees, `>` for an arrow. `None` for a character that means
+/// nothing here.
 struct Plain {
     bytes: [u8; LONGEST],
     len: usize,
