@@ -98,3 +98,17 @@ fn plain_file(source: &Source) -> Result<Vec<u8>, FormatError> {
     let bytes = std::fs::read(&source.location).map_err(|cause| FormatError::io(&source.path, cause))?;
     if bytes.is_empty() { Err(FormatError::Empty { file: source.path.clone() }) } else { Ok(bytes) }
 }
+
+/// Holds a named layer against a file that has but one: its own name, or the file's without extension.
+fn layer_is_the_file(source: &Source, own_name: Option<String>) -> Result<(), FormatError> {
+    let stem = Path::new(&source.location).file_stem().map(|s| s.to_string_lossy().into_owned());
+    let names: Vec<String> = own_name.into_iter().chain(stem).collect();
+    match &source.layer {
+        Some(layer) if !names.contains(layer) => Err(FormatError::NoSuchLayer {
+            file: source.path.clone(),
+            layer: layer.clone(),
+            layers: names.into_iter().take(1).collect(),
+        }),
+        _ => Ok(()),
+    }
+}

@@ -4,7 +4,7 @@ use encoding_rs::{Encoding, UTF_8};
 use std::borrow::Cow;
 
 /// The text of a file; not checked to be UTF-8.
-pub(super) struct Text<'a> {
+pub(in crate::format) struct Text<'a> {
     /// The bytes behind the byte-order mark.
     pub bytes: Cow<'a, [u8]>,
     /// True where all of it is UTF-8.
@@ -14,7 +14,7 @@ pub(super) struct Text<'a> {
 }
 
 /// Strips a byte-order mark, and decodes what one declares to be UTF-16.
-pub(super) fn to_utf8(bytes: &[u8]) -> Text<'_> {
+pub(in crate::format) fn to_utf8(bytes: &[u8]) -> Text<'_> {
     match Encoding::for_bom(bytes) {
         Some((encoding, mark)) if encoding != UTF_8 => {
             let (text, _) = encoding.decode_without_bom_handling(&bytes[mark..]);

@@ -1,11 +1,11 @@
 //! Delimited text: `.csv`, `.tsv`, `.txt`.
 
-mod decode;
+pub(super) mod decode;
 mod dialect;
 mod header;
 mod records;
 
-use super::{FormatError, ReadTable, Source};
+use super::{FormatError, ReadTable, Source, layer_is_the_file};
 use crate::notice::{Notice, Place, Progress};
 use crate::table::{Column, Field, Table};
 use dialect::Dialect;
@@ -19,6 +19,7 @@ const LONGEST: usize = 16 << 20;
 /// [`FormatError`] where the file is no text table with at least one row.
 pub(super) fn read(source: &Source, bytes: &[u8], progress: &dyn Progress) -> Result<ReadTable, FormatError> {
     let file = &source.path;
+    layer_is_the_file(source, None)?;
     let text = decode::to_utf8(bytes);
     let dialect = Dialect::sniff(&text);
     let mut lines = records::Records::new(&text, &dialect);
