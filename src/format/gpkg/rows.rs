@@ -1,0 +1,77 @@
+//! The rows of a table into its layer.
+
+use super::blob::BlobWriter;
+use super::content::quoted;
+use super::package::{GEOMETRY, GeometryKind, KEY, LayerToWrite};
+use crate::notice::Progress;
+use crate::table::{Cell, Shapes};
+use rusqlite::types::{Null, Value};
+use rusqlite::{Connection, Error, Result, Statement, ToSql, types::ToSqlOutput};
+
+/// Rows between two reports of progress.
+const STRIDE: usize = 1 << 14;
+
+/// Inserts every row; keys run from 1 in the order of rows.
+pub(super) fn insert(db: &Connection, layer: &LayerToWrite<'_>, srs_id: i32, progress: &dyn Progress) -> Result<()> {
+    let table = layer.table;
+    let has_shape = layer.geometry != GeometryKind::None;
+    let mut names = vec![quoted(KEY)];
+    names.extend(has_shape.then(|| quoted(GEOMETRY)));
+    names.extend(table.fields.iter().map(|f| quoted(&f.name)));
+    let marks = vec!["?"; names.len()].join(",");
+    let sql = format!("INSERT INTO {} ({}) VALUES ({marks})", quoted(&table.name), names.join(","));
+    let mut statement = db.prepare(&sql)?;
+    let mut blobs = BlobWriter::new(srs_id, layer.geometry);
+    let first_field = 2 + usize::from(has_shape);
+    let rows = table.len();
+    for row in 0..rows {
+        statement.raw_bind_parameter(1, row as i64 + 1)?;
+        if has_shape {
+            bind_shape(&mut statement, &mut blobs, &table.shapes, row)?;
+        }
+        for (i, field) in table.fields.iter().enumerate() {
+            let place = first_field + i;
+            match field.column.cell(row) {
+                Cell::Null => statement.raw_bind_parameter(place, Null)?,
+                Cell::Text(v) => statement.raw_bind_parameter(place, v)?,
+                Cell::Real(v) => statement.raw_bind_parameter(place, v)?,
+                Cell::Integer(v) => statement.raw_bind_parameter(place, v)?,
+                Cell::Boolean(v) => statement.raw_bind_parameter(place, v)?,
+            }
+        }
+        statement.raw_execute()?;
+        if (row + 1) % STRIDE == 0 {
+            progress.advance(STRIDE as u64);
+        }
+    }
+    progress.advance((rows % STRIDE) as u64);
+    Ok(())
+}
+
+fn bind_shape(statement: &mut Statement<'_>, blobs: &mut BlobWriter, shapes: &Shapes, row: usize) -> Result<()> {
+    let blob = match shapes {
+        Shapes::None => None,
+        Shapes::Points(points) => Some(points[row]).filter(|p| !p.x.is_nan()).map(|p| blobs.point(p)),
+        Shapes::Any(any) => match &any[row] {
+            None => None,
+            Some(geometry) => Some(
+                blobs
+                    .any(geometry)
+                    .map_err(|fault| Error::ToSqlConversionFailure(format!("row {}: {fault}", row + 1).into()))?,
+            ),
+        },
+    };
+    match blob {
+        Some(blob) => statement.raw_bind_parameter(2, Blob(blob)),
+        None => statement.raw_bind_parameter(2, Value::Null),
+    }
+}
+
+/// Bytes bound as they are.
+struct Blob<'a>(&'a [u8]);
+
+impl ToSql for Blob<'_> {
+    fn to_sql(&self) -> Result<ToSqlOutput<'_>> {
+        Ok(ToSqlOutput::Borrowed(rusqlite::types::ValueRef::Blob(self.0)))
+    }
+}
