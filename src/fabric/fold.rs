@@ -3,7 +3,7 @@
 use super::axis_cone::{self, Cone, NoCone};
 use super::sample::{Sample, heaviest, units};
 use super::{girdle_arc, ratios, small_circle, small_circle::SmallCircle};
-use crate::orientation::{Axis, Eigen, ExactSum};
+use crate::orientation::{Axis, ExactSum};
 use statrs::distribution::{ContinuousCDF, FisherSnedecor};
 
 /// Fewest independent poles for the test of cone against cylinder.
@@ -89,7 +89,7 @@ pub fn fold_axis(sample: &Sample, confidence: f64) -> Option<FoldAxis> {
         notes.push(format!("an arc of {arc:.0} degrees is too short to tell a cone from a cylinder"));
         None
     } else {
-        cone_test(sample, &eigen, count)
+        small_circle::plane_fit(sample).and_then(|circle| cone_test(sample, circle, count))
     };
     let (rms_misfit, class) = misfit(sample, axis);
     Some(FoldAxis {
@@ -105,10 +105,9 @@ pub fn fold_axis(sample: &Sample, confidence: f64) -> Option<FoldAxis> {
 }
 
 /// F test of Cruden & Charlesworth 1972 and Gray, Geiser & Geiser 1980 (from memory), `n` independent poles.
-/// The caller sees to the arc. `None` where a small circle fits without any misfit.
-pub fn cone_test(sample: &Sample, eigen: &Eigen, n: f64) -> Option<ConeTest> {
-    let circle = small_circle::plane_fit(sample)?;
-    let great = eigen.values[2] * sample.len() as f64;
+/// The caller sees to the arc. `None` where a small circle fits without any misfit, or `n` is 3 or less.
+pub fn cone_test(sample: &Sample, circle: SmallCircle, n: f64) -> Option<ConeTest> {
+    let great = small_circle::great_circle_misfit(&sample.tensor());
     if circle.misfit <= 1e-12 * sample.len() as f64 {
         return None;
     }

@@ -14,6 +14,8 @@ pub struct SmallCircle {
     /// Sum of squared misfits, scaled to equal weights of mean 1: of direction cosines for the plane fit,
     /// of angles in radians for the angular fit.
     pub misfit: f64,
+    /// The ends of the axes that were fitted lie on this side.
+    side: Vector3<f64>,
 }
 
 /// Start directions for the search: an even spread over the half-sphere.
@@ -39,49 +41,104 @@ fn ordered(sample: &Sample) -> Vec<(Vector3<f64>, f64)> {
     all
 }
 
+/// Ends chosen by the side of the centre are trusted where the circle is this many standard misfits off the
+/// great circle; nearer, noise would decide the ends and make any cylinder look like a cone.
+const CLEAR: f64 = 2.5;
+
 /// Least squares in direction cosines (Ramsay 1967; Gray, Geiser & Geiser 1980, from memory): the plane
-/// nearest to the ends of the axes. Each axis counts by the end nearer to the centre's side, and the choice of
-/// ends is found by iteration from many starts. `None` for fewer than 3 axes, or where they do not span a circle.
+/// nearest to the ends of the axes.
+///
+/// Which end of an axis counts is unknown. Tried are the ends that run on from each other along the best great
+/// circle, cut at its widest gap (for an arc), and from many starts the ends on the side of the circle's own
+/// centre (for a ring well off the great circle). `None` for fewer than 3 axes.
 pub fn plane_fit(sample: &Sample) -> Option<SmallCircle> {
     let data = ordered(sample);
     if data.len() < 3 {
         return None;
     }
-    let total: f64 = data.iter().map(|p| p.1).sum();
-    let own = sample.tensor().eigen()?.axes.map(Axis::vector);
-    let mut best: Option<(f64, Vector3<f64>, f64)> = None;
-    for start in (0..STARTS).map(spread).chain(own) {
-        let mut centre = start;
+    let frame = sample.tensor().eigen()?.axes.map(Axis::vector);
+    let mut best = fit_ends(&data, middle_of_arc(&data, &frame)).0;
+    for start in (0..STARTS).map(spread).chain(frame) {
+        let mut side = start;
         for _ in 0..30 {
-            let ends = data.iter().map(|(v, w)| (if v.dot(&centre) < 0.0 { -v } else { *v }, *w));
-            let mean: Vector3<f64> = ends.clone().map(|(v, w)| v * w).sum::<Vector3<f64>>() / total;
-            let mut scatter = Matrix3::zeros();
-            for (v, w) in ends {
-                let d = v - mean;
-                scatter += d * d.transpose() * w;
-            }
-            let SymmetricEigen { eigenvalues, eigenvectors } = scatter.symmetric_eigen();
-            let least = eigenvalues.imin();
-            let mut axis: Vector3<f64> = eigenvectors.column(least).into_owned();
-            let cosine = axis.dot(&mean);
-            if cosine < 0.0 {
-                axis = -axis;
-            }
-            let misfit = eigenvalues[least].max(0.0);
-            let still = (axis - centre).norm() < 1e-12;
-            centre = axis;
-            // Equal to round-off: the first stays, so that the answer does not hang on the last digit.
-            if best.is_none_or(|(m, ..)| misfit < m * (1.0 - 1e-9) - 1e-15) {
-                best = Some((misfit, axis, cosine.abs()));
-            }
-            if still {
+            let (circle, sigma) = fit_ends(&data, side);
+            let (centre, cosine) = (circle.centre, circle.cosine);
+            if cosine <= CLEAR * sigma {
                 break;
             }
+            // Equal to round-off: the first stays, so that the answer does not hang on the last digit.
+            if (centre - side).norm() < 1e-9 && circle.misfit < best.misfit * (1.0 - 1e-9) - 1e-15 {
+                best = circle;
+            }
+            if (centre - side).norm() < 1e-12 {
+                break;
+            }
+            side = centre;
         }
     }
-    let (misfit, axis, cosine) = best?;
-    let axis = Axis::new(axis.x, axis.y, axis.z).ok()?;
-    Some(SmallCircle { axis, half_angle: cosine.clamp(0.0, 1.0).acos().to_degrees(), misfit })
+    best.circle()
+}
+
+/// The same for ends that are known: those on one side of the plane normal to `side`, for example the lower ones.
+pub fn plane_fit_on_side(sample: &Sample, side: Axis) -> Option<SmallCircle> {
+    let data = ordered(sample);
+    if data.len() < 3 { None } else { fit_ends(&data, side.vector()).0.circle() }
+}
+
+struct Fit {
+    centre: Vector3<f64>,
+    cosine: f64,
+    misfit: f64,
+    side: Vector3<f64>,
+}
+
+impl Fit {
+    fn circle(&self) -> Option<SmallCircle> {
+        let axis = Axis::new(self.centre.x, self.centre.y, self.centre.z).ok()?;
+        let half_angle = self.cosine.clamp(0.0, 1.0).acos().to_degrees();
+        Some(SmallCircle { axis, half_angle, misfit: self.misfit, side: self.side })
+    }
+}
+
+/// The plane nearest to the ends on one side of the plane normal to `side`, and the standard misfit.
+fn fit_ends(data: &[(Vector3<f64>, f64)], side: Vector3<f64>) -> (Fit, f64) {
+    let total: f64 = data.iter().map(|p| p.1).sum();
+    let ends = data.iter().map(|(v, w)| (end(v, &side), *w));
+    let mean: Vector3<f64> = ends.clone().map(|(v, w)| v * w).sum::<Vector3<f64>>() / total;
+    let mut scatter = Matrix3::zeros();
+    for (v, w) in ends {
+        let d = v - mean;
+        scatter += d * d.transpose() * w;
+    }
+    let SymmetricEigen { eigenvalues, eigenvectors } = scatter.symmetric_eigen();
+    let least = eigenvalues.imin();
+    let axis: Vector3<f64> = eigenvectors.column(least).into_owned();
+    let cosine = axis.dot(&mean);
+    let misfit = eigenvalues[least].max(0.0);
+    let centre = if cosine < 0.0 { -axis } else { axis };
+    (Fit { centre, cosine: cosine.abs(), misfit, side }, (misfit / total).sqrt())
+}
+
+fn end(v: &Vector3<f64>, side: &Vector3<f64>) -> Vector3<f64> {
+    if v.dot(side) < 0.0 { -v } else { *v }
+}
+
+/// The direction in the best great circle that is farthest from the widest gap between the axes.
+fn middle_of_arc(data: &[(Vector3<f64>, f64)], frame: &[Vector3<f64>; 3]) -> Vector3<f64> {
+    let pi = std::f64::consts::PI;
+    let mut places: Vec<f64> =
+        data.iter().map(|(v, _)| v.dot(&frame[1]).atan2(v.dot(&frame[0])).rem_euclid(pi)).collect();
+    places.sort_unstable_by(f64::total_cmp);
+    let n = places.len();
+    let (mut widest, mut middle) = (0.0, 0.0);
+    for i in 0..n {
+        let next = if i + 1 < n { places[i + 1] } else { places[0] + pi };
+        if next - places[i] > widest {
+            widest = next - places[i];
+            middle = 0.5 * (next + places[i]) + pi / 2.0;
+        }
+    }
+    frame[0] * middle.cos() + frame[1] * middle.sin()
 }
 
 /// Least squares in angles (Mardia & Gadsden 1977, from memory), from the plane fit by Gauss-Newton steps.
@@ -90,8 +147,7 @@ pub fn angular_fit(sample: &Sample, start: &SmallCircle) -> SmallCircle {
     let mut centre = start.axis.vector();
     let total: f64 = data.iter().map(|p| p.1).sum();
     // Ends stay as the plane fit chose them.
-    let ends: Vec<(Vector3<f64>, f64)> =
-        data.iter().map(|(v, w)| (if v.dot(&centre) < 0.0 { -v } else { *v }, *w)).collect();
+    let ends: Vec<(Vector3<f64>, f64)> = data.iter().map(|(v, w)| (end(v, &start.side), *w)).collect();
     let score = |c: &Vector3<f64>| {
         let angle = |v: &Vector3<f64>| v.cross(c).norm().atan2(v.dot(c));
         let mean = ends.iter().map(|(v, w)| w * angle(v)).sum::<f64>() / total;
@@ -130,7 +186,8 @@ pub fn angular_fit(sample: &Sample, start: &SmallCircle) -> SmallCircle {
     }
     let axis = Axis::new(centre.x, centre.y, centre.z).unwrap_or(start.axis);
     let degrees = mean.to_degrees();
-    SmallCircle { axis, half_angle: if degrees > 90.0 { 180.0 - degrees } else { degrees }, misfit }
+    let half_angle = if degrees > 90.0 { 180.0 - degrees } else { degrees };
+    SmallCircle { axis, half_angle, misfit, side: start.side }
 }
 
 /// Sum of squared direction cosines from the best great circle, scaled like [`SmallCircle::misfit`].
