@@ -87,16 +87,30 @@ pub(super) fn from_covariance(
     eigen: &Eigen,
     which: usize,
 ) -> Result<Cone, NoCone> {
+    build(covariance, factor, eigen, which, |offset| if offset <= 1.0 { offset.asin() } else { f64::INFINITY })
+}
+
+/// The same from a covariance of angles in radians.
+pub(super) fn from_angles(covariance: &Matrix2<f64>, factor: f64, eigen: &Eigen, which: usize) -> Result<Cone, NoCone> {
+    build(covariance, factor, eigen, which, |angle| angle)
+}
+
+fn build(
+    covariance: &Matrix2<f64>,
+    factor: f64,
+    eigen: &Eigen,
+    which: usize,
+    angle: impl Fn(f64) -> f64,
+) -> Result<Cone, NoCone> {
     let SymmetricEigen { eigenvalues, eigenvectors } = covariance.symmetric_eigen();
     let (big, small) = if eigenvalues[0] >= eigenvalues[1] { (0, 1) } else { (1, 0) };
-    let semi = |k: usize| (eigenvalues[k].max(0.0) * factor).sqrt();
-    if !(semi(big) <= WIDEST.to_radians().sin()) {
-        return Err(NoCone::Undetermined);
-    }
+    let semi = |k: usize| angle((eigenvalues[k].max(0.0) * factor).sqrt()).to_degrees();
     let [j, l] = others(which);
     let direction = eigen.axes[j].vector() * eigenvectors[(0, big)] + eigen.axes[l].vector() * eigenvectors[(1, big)];
-    let toward = Axis::new(direction.x, direction.y, direction.z).map_err(|_| NoCone::Undetermined)?;
-    Ok(Cone { major: semi(big).asin().to_degrees(), minor: semi(small).asin().to_degrees(), toward })
+    match Axis::new(direction.x, direction.y, direction.z) {
+        Ok(toward) if semi(big) <= WIDEST => Ok(Cone { major: semi(big), minor: semi(small), toward }),
+        _ => Err(NoCone::Undetermined),
+    }
 }
 
 /// The two other principal axes, in their order.

@@ -6,18 +6,27 @@
 //! and cones: readings at one station are no independent witnesses.
 
 pub mod axis_cone;
+pub mod bingham;
+pub mod concentration;
+mod direction;
 pub mod fisher;
+pub mod fold;
 pub mod girdle_arc;
 pub mod harmonics;
+pub mod kent;
 pub mod modes;
 pub mod ratios;
 mod registry;
 mod sample;
 mod shape;
+pub mod small_circle;
+pub mod special;
 mod summary;
 pub mod uniformity;
+pub mod watson;
 
 pub use axis_cone::{Cone, NoCone};
+pub use direction::{Directed, DirectedFabric, Direction, rayleigh_p, summarise_directed};
 pub use registry::{ALL, Statistic};
 pub use sample::{Kind, Sample, SampleError, Stations, Unit, units};
 pub use shape::{LEAST_ARC, Shape};

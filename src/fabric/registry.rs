@@ -65,6 +65,13 @@ statistics! {
         "(n-1)/(n-R) of the same: the estimator whose inverse is unbiased. Only for clusters.";
     "fisher_alpha95", "Fisher alpha95", "degrees", 5, "Fisher 1953",
         "Radius of the exact confidence cone of the mean of the stations' directions: uncertainty of the mean, not spread. Only for clusters.";
+    "kent_kappa", "Kent kappa", "", 5, "Kent 1982", "Concentration of the directed data, by maximum likelihood. Only for structures with a sense.";
+    "kent_beta", "Kent beta", "", 5, "Kent 1982", "Ovalness of the same; above kappa/2 there are two modes. Only for structures with a sense.";
+    "watson_kappa", "Watson kappa", "", 5, "Watson 1965; Mardia & Jupp 2000 (from memory)",
+        "Maximum likelihood: positive where axes crowd about e1, negative where they avoid e3; the likelier of the two.";
+    "bingham_k2", "Bingham k2", "", 5, "Bingham 1974",
+        "Maximum likelihood along e2, with k1 = 0 along e1. Missing where axes lie in one plane (infinite).";
+    "bingham_k3", "Bingham k3", "", 5, "Bingham 1974", "Maximum likelihood along e3, k1 = 0 >= k2 >= k3.";
     "mean_cone_major", "Cone of e1, greater semi-axis", "degrees", 5,
         "Fisher, Lewis & Embleton 1987; Prentice 1984 (from memory), with Hotelling's factor",
         "Greater semi-axis of the elliptical confidence cone of e1, stations as units. Missing where it passes 45 degrees: undetermined.";

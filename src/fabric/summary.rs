@@ -1,9 +1,10 @@
 //! Every statistic of one sample, and a plain word for each that is missing.
 
 use super::axis_cone::{self, Cone, NoCone};
+use super::bingham::{self, Bingham};
 use super::sample::{self, Kind, Sample};
 use super::shape::{self, Shape};
-use super::{fisher, ratios, uniformity};
+use super::{fisher, ratios, uniformity, watson};
 use crate::orientation::{Axis, Eigen};
 
 /// Fewest readings for a shape and a mean, and fewest to trust them. Judgement, after the coverage of the
@@ -63,6 +64,10 @@ pub struct Fabric {
     pub fisher_kappa: Option<f64>,
     /// Fisher's cone of the mean of the stations' directions.
     pub fisher_alpha95: Option<f64>,
+    /// Watson's kappa, the likelier of bipolar (positive, about e1) and girdle (negative, away from e3).
+    pub watson_kappa: Option<f64>,
+    /// Bingham's k2 and k3 where k1 = 0 belongs to e1.
+    pub bingham: Option<Bingham>,
     /// Bingham's test of uniformity, corrected for small samples, stations as units.
     pub uniformity_p: Option<f64>,
     /// Form of the fabric.
@@ -94,6 +99,8 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
         resultant: None,
         fisher_kappa: None,
         fisher_alpha95: None,
+        watson_kappa: None,
+        bingham: None,
         uniformity_p: None,
         shape: Shape::TooFew,
         note: String::new(),
@@ -127,6 +134,11 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
             .insert(0, format!("a shape and a mean need {LEAST} readings of equal weight, these are worth {count:.1}"));
         fabric.note = notes.join("; ");
         return fabric;
+    }
+    fabric.watson_kappa = watson::best(eigen.values).map(|w| w.kappa);
+    fabric.bingham = bingham::fit(eigen.values);
+    if fabric.bingham.is_none() {
+        notes.push("the axes lie in one plane, so Bingham's k3 is infinite".into());
     }
     let independent = uniformity::independent_axes(&units);
     let p = uniformity::bingham_p(independent, uniformity::bingham_statistic(independent, eigen.values));
