@@ -62,6 +62,10 @@ impl WordColumn {
         };
         self.rows.push(code);
     }
+    /// The different words, in order of first use.
+    pub fn words(&self) -> impl Iterator<Item = &str> {
+        self.words.iter().map(String::as_str)
+    }
     /// The cell of a row; `None` for a null.
     pub fn get(&self, row: usize) -> Option<&str> {
         self.words.get(self.rows[row] as usize).map(String::as_str)

@@ -12,7 +12,8 @@ use crate::format::gpkg::{self, GeometryKind, LayerToWrite, Metadata, Package, S
 use crate::layer::{self, PlacedFabric, Results};
 use crate::notice::{Notice, Progress, Refusal};
 use crate::orientation::TrueAzimuth;
-use crate::style;
+use crate::style::{self, Turning};
+use crate::table::{Column, Table};
 use geo::{Coord, InteriorPoint};
 use rayon::prelude::*;
 use std::path::PathBuf;
@@ -79,7 +80,7 @@ pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
         crs: map.code_or_wkt().to_owned(),
         layers: layer::ALL.iter().zip(&layers).map(|(layer, table)| to_write(layer, table)).collect(),
         metadata: metadata(plan, &record),
-        styles: style::embedded().into_iter().map(embedded_style).collect(),
+        styles: layers.iter().filter_map(style_of).collect(),
         last_change: NO_TIME.to_owned(),
     };
     gpkg::write(&staging.path("area.gpkg")?, &package, progress)?;
@@ -178,7 +179,7 @@ fn metadata(plan: &Plan, record: &RunRecord) -> Vec<Metadata> {
     list
 }
 
-fn to_write<'a>(layer: &layer::Layer, table: &'a crate::table::Table) -> LayerToWrite<'a> {
+fn to_write<'a>(layer: &layer::Layer, table: &'a Table) -> LayerToWrite<'a> {
     LayerToWrite {
         table,
         geometry: match layer.geometry {
@@ -191,13 +192,19 @@ fn to_write<'a>(layer: &layer::Layer, table: &'a crate::table::Table) -> LayerTo
     }
 }
 
-fn embedded_style(style: style::Embedded) -> Style {
-    Style {
-        layer: style.layer.to_owned(),
-        name: style.name.to_owned(),
-        qml: style.qml,
-        sld: style.sld,
-        description: style.description.to_owned(),
+/// The style stored beside a layer, with the symbols that occur in it.
+fn style_of(table: &Table) -> Option<Style> {
+    let mut codes: Vec<&str> = match table.column("symbol") {
+        Some(Column::Word(codes)) => codes.words().collect(),
+        _ => Vec::new(),
+    };
+    codes.sort_unstable();
+    Some(Style {
+        layer: table.name.clone(),
+        name: table.name.clone(),
+        qml: style::qml(&table.name, &codes)?,
+        sld: if table.name == "orientations" { style::sld(Turning::Clockwise) } else { String::new() },
+        description: "Symbols after FGDC-STD-013-2006, turned by rotation_grid".to_owned(),
         default: true,
-    }
+    })
 }
