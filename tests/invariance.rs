@@ -69,7 +69,7 @@ fn vertical_planes_seen_from_either_side_are_one() {
     let (one, other) =
         (fabrics(&[("a.csv", HEADER.to_owned() + &one)], &[]), fabrics(&[("a.csv", HEADER.to_owned() + &other)], &[]));
     for (a, b) in one.as_array().unwrap().iter().zip(other.as_array().unwrap()) {
-        for field in ["s1", "s2", "s3", "v1_trend", "v1_plunge", "mean_cone_major", "fisher_alpha95"] {
+        for field in ["s1", "s2", "s3", "v1_trend", "v1_plunge", "mean_dip", "mean_cone_major", "uniformity_p"] {
             let (a, b) = (a[field].as_f64().unwrap(), b[field].as_f64().unwrap());
             let apart = if field == "v1_trend" { (a - b + 90.0).rem_euclid(180.0) - 90.0 } else { a - b };
             assert!(apart.abs() < 1e-9, "{field}: {a} {b}");

@@ -4,9 +4,11 @@ use super::args::RunArgs;
 use super::messages::{Printer, is_finding};
 use super::progress::progress;
 use super::{DONE, FINDINGS, STOPPED};
+use crate::fabric::Shape;
 use crate::job::{self, FabricLine, Outcome, Overrides};
 use crate::orientation::Plane;
 use crate::station::Kind;
+use std::path::Path;
 
 /// How many fabrics `run` prints; the rest are in the layer.
 const FABRICS_SHOWN: usize = 40;
@@ -55,14 +57,22 @@ fn print_outcome(outcome: &Outcome, printer: &Printer) {
     if outcome.fabrics.len() > FABRICS_SHOWN {
         printer.line(&format!("… and {} more fabrics in the fabrics layer", outcome.fabrics.len() - FABRICS_SHOWN));
     }
-    for path in &outcome.written {
+    let (styles, files): (Vec<_>, Vec<_>) = outcome.written.iter().partition(|p| is_style(p));
+    for path in files {
         printer.line(&format!("wrote {}", path.display()));
+    }
+    if let Some(folder) = styles.first().and_then(|p| p.ancestors().find(|a| a.ends_with("styles"))) {
+        printer.line(&format!("wrote {} ({} files)", folder.display(), styles.len()));
     }
     printer.object(&serde_json::json!({
         "severity": "result",
         "counts": counts,
         "written": outcome.written.iter().map(|p| p.display().to_string()).collect::<Vec<_>>(),
     }));
+}
+
+fn is_style(path: &Path) -> bool {
+    path.ancestors().skip(1).any(|a| a.ends_with("styles"))
 }
 
 /// "North block · bedding: n 84, cluster, mean plane 043/31 SE, cone 5.1° × 3.2°".
@@ -86,6 +96,13 @@ fn fabric_line(line: &FabricLine) -> String {
     }
     if let (Some(_), Some(cone)) = (fabric.mean, fabric.mean_cone) {
         parts.push(format!("cone of the mean {:.1}° × {:.1}°", cone.major, cone.minor));
+    }
+    if let (Shape::Girdle, Kind::Planar, Some(eigen)) = (fabric.shape, line.placed.structure.kind, fabric.eigen) {
+        let axis = eigen.axes[2];
+        parts.push(format!("fold axis {:03.0}/{:02.0} (trend/plunge)", axis.trend().round() % 360.0, axis.plunge()));
+        if let Some(cone) = fabric.third_cone {
+            parts.push(format!("cone of the axis {:.1}° × {:.1}°", cone.major, cone.minor));
+        }
     }
     if let Some(eigen) = fabric.eigen {
         let [s1, s2, s3] = eigen.values;

@@ -144,8 +144,8 @@ fn valid(shape: MultiPolygon<f64>, name: &str, place: Place, notices: &mut Vec<N
                     "domain-repaired",
                     place,
                     format!(
-                        "domain \"{name}\" is not a valid polygon ({fault}); it was repaired and now covers {:.6e} square map units",
-                        repaired.unsigned_area()
+                        "domain \"{name}\" is not a valid polygon ({fault}); it was repaired and now covers {} square map units",
+                        plain(repaired.unsigned_area())
                     ),
                 )
                 .hint("look at the repaired polygon in the domains layer"),
@@ -169,6 +169,12 @@ fn valid(shape: MultiPolygon<f64>, name: &str, place: Place, notices: &mut Vec<N
             None
         }
     }
+}
+
+/// An area with about four digits that mean something, without an exponent.
+fn plain(area: f64) -> String {
+    let decimals = (4.0 - area.log10()).clamp(0.0, 12.0) as usize;
+    format!("{area:.decimals$}")
 }
 
 fn report_overlaps(file: &str, polygons: &[NamedPolygon], notices: &mut Vec<Notice>) {
@@ -203,10 +209,11 @@ fn report_overlaps(file: &str, polygons: &[NamedPolygon], notices: &mut Vec<Noti
                 "domains-overlap",
                 Place::file(file),
                 format!(
-                    "domains \"{}\" and \"{}\" overlap by {area:.6e} square map units ({:.3} % of the smaller)",
+                    "domains \"{}\" and \"{}\" overlap by {area} square map units ({:.3} % of the smaller)",
                     polygons[a].name,
                     polygons[b].name,
-                    100.0 * share
+                    100.0 * share,
+                    area = plain(area),
                 ),
             )
             .hint("a station in the overlap goes to the domain of lower id"),
@@ -271,6 +278,6 @@ mod tests {
         let c = feature(3, "c", wkt!(POLYGON((20. 0.,20. 10.,30. 10.,30. 0.,20. 0.))).into());
         let (_, notices) = clean("f", vec![a, b, c], SameName::Refuse).unwrap();
         assert_eq!(notices.len(), 1, "{notices:?}");
-        assert!(notices[0].message.contains("2.000000e1"), "{}", notices[0].message);
+        assert!(notices[0].message.contains("20.00 square"), "{}", notices[0].message);
     }
 }

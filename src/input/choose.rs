@@ -96,7 +96,7 @@ impl Chooser<'_> {
             Notice::info(
                 "column-guessed",
                 Place::file(&self.spec.file).in_column(&column),
-                format!("column \"{column}\" was read as {words}, from its name"),
+                format!("read as {words}, from its name"),
             )
             .hint(format!("name another under [stations.columns], key {key}")),
         );

@@ -22,7 +22,7 @@ pub enum JobError {
     #[error(transparent)]
     Format(#[from] FormatError),
     /// A source cannot be understood.
-    #[error(transparent)]
+    #[error("{}{}", .0, .0.hint().map(|h| format!(" ({h})")).unwrap_or_default())]
     Input(#[from] InputError),
     /// A CRS cannot be used.
     #[error("{}{}", .0, .0.hint().map(|h| format!(" ({h})")).unwrap_or_default())]
