@@ -3,7 +3,7 @@
 use crate::station::Kind;
 
 /// Half the diagonal of two digits at [`POINTS`], plus a little air; millimetres.
-const CLEARANCE: f64 = 1.7;
+const CLEARANCE: f64 = 2.0;
 /// Size of the number in points.
 pub(super) const POINTS: f64 = 6.5;
 /// How far the strike lines of all planar symbols but the minor fault reach from the station, in millimetres.
