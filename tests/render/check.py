@@ -4,7 +4,8 @@
     /usr/bin/python3 tests/render/check.py OUT_FOLDER [--pictures FOLDER] [--only qgis|mapserver]
 
 Reads OUT_FOLDER/area.gpkg (layer orientations; QGIS finds its style in there by itself) and, for MapServer,
-OUT_FOLDER/styles/orientations_ccw.sld. Needs Debian's python3-qgis, python3-mapscript, python3-gdal, python3-numpy.
+OUT_FOLDER/styles/orientations_ccw*.sld. Needs Debian's python3-qgis, python3-mapscript, python3-gdal, python3-numpy and
+fontconfig.
 
 Every reading in the sample is drawn alone on a 14 mm picture, and its pixels are measured without regard to where on
 the picture they are: the long axis of the ink is the strike line or the arrow's shaft; the side to which the ink thins
@@ -12,10 +13,12 @@ out across the strike line is the dip side, the end at which it is thick the arr
 rotation_grid + 90, arrows along rotation_grid, clockwise from the picture's top, both within 2 degrees. The station
 must lie on the symbol's axis within 0.15 mm. Symbols with marks on both sides are left out.
 """
+
 import argparse
 import math
 import os
 import pathlib
+import subprocess
 import sys
 
 import numpy
@@ -39,7 +42,9 @@ def sample(geopackage):
         symbol = feature["symbol"]
         if symbol in DOWN_DIP | ALONG and feature["rotation_grid"] is not None:
             point = feature.GetGeometryRef()
-            found.setdefault(symbol, []).append((feature["rotation_grid"], feature.GetFID(), point.GetX(), point.GetY()))
+            found.setdefault(symbol, []).append(
+                (feature["rotation_grid"], feature.GetFID(), point.GetX(), point.GetY())
+            )
     for symbol, readings in sorted(found.items()):
         readings.sort()
         step = max(1, len(readings) / PER_SYMBOL)
@@ -85,6 +90,7 @@ class Qgis:
         self.application = core.QgsApplication([], False)
         self.application.initQgis()
         self.layer = core.QgsVectorLayer(f"{folder / 'area.gpkg'}|layername=orientations", "orientations", "ogr")
+        self.close = lambda: None
         assert self.layer.renderer().type() == "categorizedSymbol", "QGIS did not find the layer's style"
 
     def draw(self, path, extent, width, height, dpi):
@@ -118,67 +124,68 @@ class MapServer:
         import mapscript
 
         self.mapscript, self.folder = mapscript, folder
-        self.sld = (folder / "styles" / "orientations_ccw.sld").read_text()
+        self.close = self.open(DPI, ["orientations_ccw"])
 
-    def draw(self, path, data, extent, width, height, dpi, labels):
-        sld = self.sld if labels else drop_labels(self.sld)
+    def open(self, dpi, styles):
+        """One layer per style; returns what to call at the end."""
+        layer = """  LAYER
+    NAME "{}"
+    TYPE POINT
+    STATUS ON
+    CONNECTIONTYPE OGR
+    CONNECTION "{}"
+    DATA "orientations"
+  END
+"""
+        fonts = self.folder / "styles" / "check_fonts.txt"
+        fonts.write_text("sans " + subprocess.check_output(["fc-match", "-f", "%{file}", "sans"], text=True))
         map_file = self.folder / "styles" / "check.map"  # links in the SLD are relative to the map file's folder
-        map_file.write_text(
-            f"""MAP
+        map_file.write_text(f"""MAP
   NAME "check"
-  SIZE {width} {height}
-  EXTENT {' '.join(map(str, extent))}
   UNITS METERS
+  SIZE 100 100
+  EXTENT 0 0 1 1
   IMAGETYPE PNG24
   IMAGECOLOR 255 255 255
   DEFRESOLUTION {25.4 / 0.28}
   RESOLUTION {dpi}
-  MAXSIZE 8000
+  FONTSET "{fonts.name}"
   WEB
     VALIDATION
       "sld_external_graphic" "^symbols/.*\\.svg$"
     END
   END
-  LAYER
-    NAME "orientations"
-    TYPE POINT
-    STATUS ON
-    CONNECTIONTYPE OGR
-    CONNECTION "{self.folder / 'area.gpkg'}"
-    DATA "{data}"
-  END
-END
-"""
-        )
-        try:
-            drawing = self.mapscript.mapObj(str(map_file))
-            layer = drawing.getLayerByName("orientations")
-            # MapServer reports success as 0.
-            assert layer.applySLD(sld, "orientations") == 0
-            drawing.draw().save(str(path), drawing)
-        finally:
-            map_file.unlink()
+""" + "".join(layer.format(style, self.folder / "area.gpkg") for style in styles) + "END\n")
+        self.map = self.mapscript.mapObj(str(map_file))
+        for style in styles:
+            sld = (self.folder / "styles" / f"{style}.sld").read_text()
+            assert self.map.getLayerByName(style).applySLD(sld, "orientations") == 0  # success
+        return lambda: (map_file.unlink(), fonts.unlink())
+
+    def draw(self, path, extent, width, height, data="orientations"):
+        drawing = self.map.clone()  # a map that was drawn does not take other data
+        for i in range(drawing.numlayers):
+            drawing.getLayer(i).data = data
+        drawing.setSize(width, height)
+        drawing.setExtent(*extent)
+        drawing.draw().save(str(path), drawing)
 
     def one(self, path, fid, x, y):
         data = f"SELECT * FROM orientations WHERE fid = {fid}"
         half = 7 * (SIDE - 1) / SIDE  # MapServer's extent runs from pixel centre to pixel centre
-        self.draw(path, data, (x - half, y - half, x + half, y + half), SIDE, SIDE, DPI, False)
+        self.draw(path, (x - half, y - half, x + half, y + half), SIDE, SIDE, data)
 
     def all(self, path, extent, width, height):
-        self.draw(path, "orientations", extent, width, height, 150, True)
-
-
-def drop_labels(sld):
-    while "<TextSymbolizer>" in sld:
-        before, rest = sld.split("<TextSymbolizer>", 1)
-        sld = before + rest.split("</TextSymbolizer>", 1)[1]
-    return sld
+        self.close = self.open(150, ["orientations_ccw", "orientations_ccw_numbers"])
+        self.draw(path, extent, width, height)
 
 
 def main():
     arguments = argparse.ArgumentParser(description=__doc__, formatter_class=argparse.RawDescriptionHelpFormatter)
     arguments.add_argument("folder", type=pathlib.Path)
-    arguments.add_argument("--pictures", type=pathlib.Path, help="keep a picture of the whole layer from each renderer here")
+    arguments.add_argument(
+        "--pictures", type=pathlib.Path, help="keep a picture of the whole layer from each renderer here"
+    )
     arguments.add_argument("--only", choices=["qgis", "mapserver"])
     given = arguments.parse_args()
     folder = given.folder.resolve()
@@ -205,9 +212,13 @@ def main():
             misses.append(miss)
             if error > TOLERANCE or miss > MISS_MM:
                 failures += 1
-                print(f"{renderer.name}: fid {fid}, {symbol}: wanted {wanted:.1f}, drawn {direction:.1f}, {miss:.2f} mm off")
+                print(
+                    f"{renderer.name}: fid {fid}, {symbol}: wanted {wanted:.1f}, drawn {direction:.1f}, {miss:.2f} mm off"
+                )
         listed = ", ".join(f"{s} {e:.2f}" for s, (e, _) in worst.items())
-        print(f"{renderer.name}: {len(readings)} symbols; worst angle by symbol: {listed}; worst place {max(misses):.3f} mm")
+        print(
+            f"{renderer.name}: {len(readings)} symbols; worst angle by symbol: {listed}; worst place {max(misses):.3f} mm"
+        )
         if given.pictures:
             given.pictures.mkdir(parents=True, exist_ok=True)
             source = ogr.Open(str(folder / "area.gpkg"))
@@ -217,6 +228,7 @@ def main():
             scale = 1600 / max(extent[2] - extent[0], extent[3] - extent[1])
             size = [round((extent[2] - extent[0]) * scale), round((extent[3] - extent[1]) * scale)]
             renderer.all(given.pictures / f"{key}.png", extent, *size)
+        renderer.close()
     picture.unlink(missing_ok=True)
     pathlib.Path(f"{picture}.aux.xml").unlink(missing_ok=True)
     sys.exit(1 if failures else 0)
