@@ -288,7 +288,7 @@ def north_sheet():
         (["X14", t[1], t[2], t[3], "bedding", "210"], "row too short"),
         (bad(station="X15") + ["41", "upright"], "row too long"),
         (bad(station="X16", date="2025-13-40"), "not a date"),
-        (bad(station="X17", quad="to the river"), "dip quadrant is no compass point"),
+        (bad(station="X17", date=""), "no date"),
         (bad(station="X18", strike="045", dip="40", quad="NW"), "dip quadrant contradicts the right-hand strike"),
         (bad(station="X19", strike="200", dip="55", quad="E"), "dip quadrant contradicts the right-hand strike"),
         (bad(station="X20", structure=""), "no structure"),

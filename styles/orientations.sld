@@ -28,30 +28,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>02.15.02</Name>
@@ -115,30 +91,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>04.03.03</Name>
@@ -202,30 +154,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.03</Name>
@@ -270,30 +198,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.13</Name>
@@ -316,30 +220,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.15</Name>
@@ -362,30 +242,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>07.01</Name>
@@ -427,30 +283,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>07.03</Name>
@@ -514,30 +346,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>08.02.04</Name>
@@ -601,30 +409,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>08.03.03</Name>
@@ -649,19 +433,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.001_east</Name>
-     <Title>lineation, inclined, to the east</Title>
+     <Name>09.001</Name>
+     <Title>lineation, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.001</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.001</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -675,82 +453,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.001_west</Name>
-     <Title>lineation, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.001</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.001.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>09.005</Name>
@@ -794,19 +496,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.017_east</Name>
-     <Title>slickenline, inclined, to the east</Title>
+     <Name>09.017</Name>
+     <Title>slickenline, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.017</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.017</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -820,82 +516,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.017_west</Name>
-     <Title>slickenline, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.017</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.017.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>09.019</Name>
@@ -920,19 +540,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.097_east</Name>
-     <Title>axis of a small fold, inclined, to the east</Title>
+     <Name>09.097</Name>
+     <Title>axis of a small fold, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.097</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.097</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -946,82 +560,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.097_west</Name>
-     <Title>axis of a small fold, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.097</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.097.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>planar</Name>
@@ -1044,30 +582,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>planar_horizontal</Name>
@@ -1111,19 +625,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>linear_east</Name>
-     <Title>line of another kind, inclined, to the east</Title>
+     <Name>linear</Name>
+     <Title>line of another kind, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>linear</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>linear</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -1137,82 +645,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>linear_west</Name>
-     <Title>line of another kind, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>linear</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/linear.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>linear_horizontal</Name>
@@ -1254,6 +686,1448 @@
        <Size>50</Size>
       </Graphic>
      </PointSymbolizer>
+    </Rule>
+   </FeatureTypeStyle>
+   <FeatureTypeStyle>
+    <Rule>
+     <Name>number_planar_1</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>258.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>281.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>0</DisplacementX>
+         <DisplacementY>11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_2</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>281.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>303.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>4</DisplacementX>
+         <DisplacementY>10</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_3</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>303.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>326.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>8</DisplacementX>
+         <DisplacementY>8</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_4</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>326.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>348.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>10</DisplacementX>
+         <DisplacementY>4</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_5</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:Or>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>348.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>11.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:Or>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>11</DisplacementX>
+         <DisplacementY>0</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_6</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>11.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>33.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>10</DisplacementX>
+         <DisplacementY>-4</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_7</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>33.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>56.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>8</DisplacementX>
+         <DisplacementY>-8</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_8</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>56.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>78.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>4</DisplacementX>
+         <DisplacementY>-10</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_9</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>78.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>101.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>0</DisplacementX>
+         <DisplacementY>-11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_10</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>101.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>123.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-4</DisplacementX>
+         <DisplacementY>-10</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_11</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>123.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>146.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-8</DisplacementX>
+         <DisplacementY>-8</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_12</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>146.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>168.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-10</DisplacementX>
+         <DisplacementY>-4</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_13</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>168.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>191.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-11</DisplacementX>
+         <DisplacementY>0</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_14</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>191.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>213.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-10</DisplacementX>
+         <DisplacementY>4</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_15</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>213.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>236.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-8</DisplacementX>
+         <DisplacementY>8</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_planar_16</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>planar</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>236.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>258.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-4</DisplacementX>
+         <DisplacementY>10</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_1</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:Or>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>348.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>11.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:Or>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>0</DisplacementX>
+         <DisplacementY>29</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_2</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>11.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>33.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>11</DisplacementX>
+         <DisplacementY>26</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_3</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>33.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>56.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>20</DisplacementX>
+         <DisplacementY>20</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_4</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>56.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>78.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>26</DisplacementX>
+         <DisplacementY>11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_5</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>78.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>101.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>29</DisplacementX>
+         <DisplacementY>0</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_6</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>101.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>123.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>26</DisplacementX>
+         <DisplacementY>-11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_7</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>123.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>146.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>20</DisplacementX>
+         <DisplacementY>-20</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_8</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>146.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>168.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>11</DisplacementX>
+         <DisplacementY>-26</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_9</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>168.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>191.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>0</DisplacementX>
+         <DisplacementY>-29</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_10</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>191.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>213.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-11</DisplacementX>
+         <DisplacementY>-26</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_11</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>213.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>236.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-20</DisplacementX>
+         <DisplacementY>-20</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_12</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>236.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>258.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-26</DisplacementX>
+         <DisplacementY>-11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_13</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>258.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>281.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-29</DisplacementX>
+         <DisplacementY>0</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_14</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>281.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>303.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-26</DisplacementX>
+         <DisplacementY>11</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_15</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>303.75</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>326.25</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-20</DisplacementX>
+         <DisplacementY>20</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
+    </Rule>
+    <Rule>
+     <Name>number_linear_16</Name>
+     <ogc:Filter>
+      <ogc:And>
+       <ogc:PropertyIsEqualTo>
+        <ogc:PropertyName>kind</ogc:PropertyName>
+        <ogc:Literal>linear</ogc:Literal>
+       </ogc:PropertyIsEqualTo>
+       <ogc:And>
+        <ogc:PropertyIsGreaterThanOrEqualTo>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>326.25</ogc:Literal>
+        </ogc:PropertyIsGreaterThanOrEqualTo>
+        <ogc:PropertyIsLessThan>
+         <ogc:PropertyName>rotation_grid</ogc:PropertyName>
+         <ogc:Literal>348.75</ogc:Literal>
+        </ogc:PropertyIsLessThan>
+       </ogc:And>
+      </ogc:And>
+     </ogc:Filter>
+     <TextSymbolizer>
+      <Label>
+       <ogc:PropertyName>label</ogc:PropertyName>
+      </Label>
+      <Font>
+       <CssParameter name="font-family">sans</CssParameter>
+       <CssParameter name="font-size">8</CssParameter>
+      </Font>
+      <LabelPlacement>
+       <PointPlacement>
+        <AnchorPoint>
+         <AnchorPointX>0.5</AnchorPointX>
+         <AnchorPointY>0.5</AnchorPointY>
+        </AnchorPoint>
+        <Displacement>
+         <DisplacementX>-11</DisplacementX>
+         <DisplacementY>26</DisplacementY>
+        </Displacement>
+       </PointPlacement>
+      </LabelPlacement>
+      <Fill>
+       <CssParameter name="fill">#000000</CssParameter>
+      </Fill>
+     </TextSymbolizer>
     </Rule>
    </FeatureTypeStyle>
   </UserStyle>

@@ -1,5 +1,5 @@
 <?xml version="1.0" encoding="UTF-8"?>
-<!-- For renderers that turn graphics counter-clockwise; otherwise the same as orientations.sld. Draw the layer in its own CRS: the rotations hold for no other. -->
+<!-- For renderers that turn graphics counter-clockwise; orientations_ccw_numbers.sld on a second layer adds the dips and plunges. Draw the layer in its own CRS: the rotations hold for no other. -->
 <StyledLayerDescriptor version="1.0.0" xmlns="http://www.opengis.net/sld" xmlns:ogc="http://www.opengis.net/ogc" xmlns:xlink="http://www.w3.org/1999/xlink">
  <NamedLayer>
   <Name>orientations</Name>
@@ -28,30 +28,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>02.15.02</Name>
@@ -115,30 +91,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>04.03.03</Name>
@@ -202,30 +154,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.03</Name>
@@ -270,30 +198,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.13</Name>
@@ -316,30 +220,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>06.15</Name>
@@ -362,30 +242,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>07.01</Name>
@@ -427,30 +283,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>07.03</Name>
@@ -514,30 +346,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>08.02.04</Name>
@@ -601,30 +409,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>08.03.03</Name>
@@ -649,19 +433,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.001_east</Name>
-     <Title>lineation, inclined, to the east</Title>
+     <Name>09.001</Name>
+     <Title>lineation, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.001</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.001</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -675,82 +453,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.001_west</Name>
-     <Title>lineation, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.001</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.001.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_ccw</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>09.005</Name>
@@ -794,19 +496,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.017_east</Name>
-     <Title>slickenline, inclined, to the east</Title>
+     <Name>09.017</Name>
+     <Title>slickenline, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.017</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.017</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -820,82 +516,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.017_west</Name>
-     <Title>slickenline, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.017</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.017.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_ccw</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>09.019</Name>
@@ -920,19 +540,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>09.097_east</Name>
-     <Title>axis of a small fold, inclined, to the east</Title>
+     <Name>09.097</Name>
+     <Title>axis of a small fold, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.097</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>09.097</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -946,82 +560,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>09.097_west</Name>
-     <Title>axis of a small fold, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>09.097</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/09.097.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_ccw</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>planar</Name>
@@ -1044,30 +582,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>10</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>planar_horizontal</Name>
@@ -1111,19 +625,13 @@
      </PointSymbolizer>
     </Rule>
     <Rule>
-     <Name>linear_east</Name>
-     <Title>line of another kind, inclined, to the east</Title>
+     <Name>linear</Name>
+     <Title>line of another kind, inclined</Title>
      <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>linear</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsLessThan>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsLessThan>
-      </ogc:And>
+      <ogc:PropertyIsEqualTo>
+       <ogc:PropertyName>symbol</ogc:PropertyName>
+       <ogc:Literal>linear</ogc:Literal>
+      </ogc:PropertyIsEqualTo>
      </ogc:Filter>
      <PointSymbolizer>
       <Graphic>
@@ -1137,82 +645,6 @@
        </Rotation>
       </Graphic>
      </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>1</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>-3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
-    </Rule>
-    <Rule>
-     <Name>linear_west</Name>
-     <Title>line of another kind, inclined, to the west</Title>
-     <ogc:Filter>
-      <ogc:And>
-       <ogc:PropertyIsEqualTo>
-        <ogc:PropertyName>symbol</ogc:PropertyName>
-        <ogc:Literal>linear</ogc:Literal>
-       </ogc:PropertyIsEqualTo>
-       <ogc:PropertyIsGreaterThanOrEqualTo>
-        <ogc:PropertyName>rotation_grid</ogc:PropertyName>
-        <ogc:Literal>180</ogc:Literal>
-       </ogc:PropertyIsGreaterThanOrEqualTo>
-      </ogc:And>
-     </ogc:Filter>
-     <PointSymbolizer>
-      <Graphic>
-       <ExternalGraphic>
-        <OnlineResource xlink:type="simple" xlink:href="symbols/linear.svg"/>
-        <Format>image/svg+xml</Format>
-       </ExternalGraphic>
-       <Size>50</Size>
-       <Rotation>
-        <ogc:PropertyName>rotation_ccw</ogc:PropertyName>
-       </Rotation>
-      </Graphic>
-     </PointSymbolizer>
-     <TextSymbolizer>
-      <Label>
-       <ogc:PropertyName>label</ogc:PropertyName>
-      </Label>
-      <Font>
-       <CssParameter name="font-family">sans</CssParameter>
-       <CssParameter name="font-size">8</CssParameter>
-      </Font>
-      <LabelPlacement>
-       <PointPlacement>
-        <AnchorPoint>
-         <AnchorPointX>0</AnchorPointX>
-         <AnchorPointY>0.5</AnchorPointY>
-        </AnchorPoint>
-        <Displacement>
-         <DisplacementX>3</DisplacementX>
-         <DisplacementY>0</DisplacementY>
-        </Displacement>
-       </PointPlacement>
-      </LabelPlacement>
-      <Fill>
-       <CssParameter name="fill">#000000</CssParameter>
-      </Fill>
-     </TextSymbolizer>
     </Rule>
     <Rule>
      <Name>linear_horizontal</Name>

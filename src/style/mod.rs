@@ -9,11 +9,12 @@ mod number;
 mod palette;
 mod qml;
 mod sld;
+mod sld_numbers;
 mod xml;
 
 pub use palette::{AREA_COLOURS, Rgb};
 pub use qml::{LAYERS, qml};
-pub use sld::{Turning, sld};
+pub use sld::{Turning, sld, sld_of_numbers};
 
 use crate::symbol;
 
@@ -23,6 +24,7 @@ pub fn files() -> Vec<(String, String)> {
     let mut files = vec![
         ("orientations.sld".to_owned(), sld(Turning::Clockwise)),
         ("orientations_ccw.sld".to_owned(), sld(Turning::CounterClockwise)),
+        ("orientations_ccw_numbers.sld".to_owned(), sld_of_numbers()),
     ];
     files.extend(symbol::ALL.iter().map(|s| (symbol_file(s), symbol::svg(s))));
     files

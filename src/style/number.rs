@@ -3,11 +3,9 @@
 use crate::station::Kind;
 
 /// Half the diagonal of two digits at [`POINTS`], plus a little air; millimetres.
-const CLEARANCE: f64 = 1.7;
+const CLEARANCE: f64 = 2.0;
 /// Size of the number in points.
 pub(super) const POINTS: f64 = 6.5;
-/// How far the strike lines of all planar symbols but the minor fault reach from the station, in millimetres.
-pub(super) const STRIKE_REACH: f64 = 2.5;
 
 /// From the station to the middle of the number, for a symbol at its own size; millimetres.
 pub(super) fn distance(kind: Kind) -> f64 {
