@@ -12,8 +12,6 @@ use wkb::writer::{WriteOptions, write_geometry};
 const PLAIN: u8 = 0b0000_0001;
 /// The same with an envelope of x and y.
 const WITH_ENVELOPE: u8 = PLAIN | 0b0000_0010;
-/// The same for an empty geometry.
-const EMPTY: u8 = PLAIN | 0b0001_0000;
 const WKB: WriteOptions = WriteOptions { endianness: Endianness::LittleEndian };
 
 /// Makes blobs for one layer.
@@ -44,13 +42,13 @@ impl BlobWriter {
         &self.buffer
     }
 
-    /// Any geometry, promoted to the layer's kind.
+    /// Any geometry, promoted to the layer's kind; nothing for an empty one, which is written as a null.
     ///
     /// # Errors
     /// What is wrong with the geometry.
-    pub fn any(&mut self, geometry: &Geometry<f64>) -> Result<&[u8], String> {
+    pub fn any(&mut self, geometry: &Geometry<f64>) -> Result<Option<&[u8]>, String> {
         let promoted = match (self.kind, geometry) {
-            (GeometryKind::Point, Geometry::Point(p)) => return Ok(self.point(p.0)),
+            (GeometryKind::Point, Geometry::Point(p)) => return Ok(Some(self.point(p.0))),
             (GeometryKind::MultiPolygon, Geometry::Polygon(p)) => &MultiPolygon(vec![p.clone()]).into(),
             (GeometryKind::MultiLineString, Geometry::LineString(l)) => &MultiLineString(vec![l.clone()]).into(),
             (GeometryKind::MultiLineString, Geometry::Line(l)) => {
@@ -60,17 +58,13 @@ impl BlobWriter {
             | (GeometryKind::MultiLineString, Geometry::MultiLineString(_)) => geometry,
             _ => return Err(format!("a shape is not of the layer's kind {:?}", self.kind)),
         };
-        match Bounds::of(promoted) {
-            None => self.header(EMPTY),
-            Some(b) => {
-                self.header(WITH_ENVELOPE);
-                for v in [b.min.x, b.max.x, b.min.y, b.max.y] {
-                    self.buffer.extend_from_slice(&v.to_le_bytes());
-                }
-            }
+        let Some(b) = Bounds::of(promoted) else { return Ok(None) };
+        self.header(WITH_ENVELOPE);
+        for v in [b.min.x, b.max.x, b.min.y, b.max.y] {
+            self.buffer.extend_from_slice(&v.to_le_bytes());
         }
         write_geometry(&mut self.buffer, promoted, &WKB).map_err(|e| format!("a shape cannot be encoded: {e}"))?;
-        Ok(&self.buffer)
+        Ok(Some(&self.buffer))
     }
 }
 
@@ -92,7 +86,7 @@ mod tests {
     fn a_polygon_is_promoted_and_has_its_envelope_in_front() {
         let mut w = BlobWriter::new(1, GeometryKind::MultiPolygon);
         let square = polygon![(x: 0.0, y: 10.0), (x: 5.0, y: 10.0), (x: 5.0, y: 20.0), (x: 0.0, y: 10.0)];
-        let blob = w.any(&square.into()).unwrap();
+        let blob = w.any(&square.into()).unwrap().unwrap();
         assert_eq!(blob[3], 3);
         let double = |i: usize| f64::from_le_bytes(blob[8 + 8 * i..16 + 8 * i].try_into().unwrap());
         assert_eq!([double(0), double(1), double(2), double(3)], [0.0, 5.0, 10.0, 20.0]);
@@ -100,9 +94,9 @@ mod tests {
     }
 
     #[test]
-    fn an_empty_shape_says_so() {
+    fn an_empty_shape_is_none_and_a_shape_of_another_kind_an_error() {
         let mut w = BlobWriter::new(1, GeometryKind::MultiPolygon);
-        let blob = w.any(&MultiPolygon::<f64>(vec![]).into()).unwrap();
-        assert_eq!((blob[3], blob.len()), (0x11, 8 + 9));
+        assert_eq!(w.any(&MultiPolygon::<f64>(vec![]).into()), Ok(None));
+        assert!(w.any(&Geometry::Point((1.0, 2.0).into())).is_err());
     }
 }

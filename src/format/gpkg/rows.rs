@@ -5,8 +5,8 @@ use super::content::quoted;
 use super::package::{GEOMETRY, GeometryKind, KEY, LayerToWrite};
 use crate::notice::Progress;
 use crate::table::{Cell, Shapes};
-use rusqlite::types::{Null, Value};
-use rusqlite::{Connection, Error, Result, Statement, ToSql, types::ToSqlOutput};
+use rusqlite::types::Null;
+use rusqlite::{Connection, Error, Result, Statement};
 
 /// Rows between two reports of progress.
 const STRIDE: usize = 1 << 14;
@@ -54,24 +54,10 @@ fn bind_shape(statement: &mut Statement<'_>, blobs: &mut BlobWriter, shapes: &Sh
         Shapes::Points(points) => Some(points[row]).filter(|p| !p.x.is_nan()).map(|p| blobs.point(p)),
         Shapes::Any(any) => match &any[row] {
             None => None,
-            Some(geometry) => Some(
-                blobs
-                    .any(geometry)
-                    .map_err(|fault| Error::ToSqlConversionFailure(format!("row {}: {fault}", row + 1).into()))?,
-            ),
+            Some(geometry) => blobs
+                .any(geometry)
+                .map_err(|fault| Error::ToSqlConversionFailure(format!("row {}: {fault}", row + 1).into()))?,
         },
     };
-    match blob {
-        Some(blob) => statement.raw_bind_parameter(2, Blob(blob)),
-        None => statement.raw_bind_parameter(2, Value::Null),
-    }
-}
-
-/// Bytes bound as they are.
-struct Blob<'a>(&'a [u8]);
-
-impl ToSql for Blob<'_> {
-    fn to_sql(&self) -> Result<ToSqlOutput<'_>> {
-        Ok(ToSqlOutput::Borrowed(rusqlite::types::ValueRef::Blob(self.0)))
-    }
+    statement.raw_bind_parameter(2, blob)
 }

@@ -80,11 +80,6 @@ impl<'a> Records<'a> {
         line_ends(self.raw(at).trim_ascii_end())
     }
 
-    /// True for the last record where it opens a quote and never closes it.
-    fn runs_open(&self, at: &At) -> bool {
-        at.bytes.end == self.text.len() && self.raw(at).iter().filter(|&&b| b == b'"').count() % 2 == 1
-    }
-
     /// Goes back to the second line of a record.
     fn resume_on_next_line(&mut self, at: &At) {
         let raw = self.raw(at);
@@ -92,6 +87,26 @@ impl<'a> Records<'a> {
         self.origin = at.bytes.start + first;
         self.reader = Self::reader(&self.text[self.origin..], self.delimiter);
     }
+}
+
+/// True where every quote opens a cell, closes one, or is doubled within one. Text behind a closing quote, as in
+/// `"open` … `,"again`, means that the quote was never meant to close that cell.
+fn well_quoted(raw: &[u8], delimiter: u8) -> bool {
+    let (mut inside, mut at_start) = (false, true);
+    let mut bytes = raw.iter().copied().peekable();
+    while let Some(byte) = bytes.next() {
+        let ends = |b: u8| b == delimiter || b == b'\r' || b == b'\n';
+        if !inside {
+            inside = byte == b'"' && at_start;
+            at_start = ends(byte);
+        } else if byte == b'"' && bytes.next_if_eq(&b'"').is_none() {
+            if bytes.peek().is_some_and(|&b| !ends(b)) {
+                return false;
+            }
+            inside = false;
+        }
+    }
+    !inside
 }
 
 /// Counts line ends: LF, CR LF or a lone CR.
@@ -139,7 +154,10 @@ pub(super) fn read(
     };
     let mut record = csv::ByteRecord::new();
     while let Some(at) = lines.next(&mut record) {
-        if at.bytes.len() > super::LONGEST && !lines.runs_open(&at) {
+        let raw = lines.raw(&at);
+        let inner = lines.inner_lines(&at);
+        let runaway = inner > 0 && !well_quoted(raw, lines.delimiter);
+        if raw.len() > super::LONGEST && !runaway {
             return Err(FormatError::LineTooLong { file: file.to_owned(), line: at.line, limit: super::LONGEST });
         }
         if record.iter().all(|cell| cell.trim_ascii().is_empty()) {
@@ -158,11 +176,9 @@ pub(super) fn read(
             code,
             reason,
         };
-        let raw = lines.raw(&at);
-        let inner = lines.inner_lines(&at);
-        if inner > 0 && lines.runs_open(&at) {
+        if runaway {
             let first = raw.split(|&b| b == b'\n' || b == b'\r').next().unwrap_or_default();
-            let reason = "a quotation mark opens a cell here and none closes it; remove it, or close it".to_owned();
+            let reason = "a quotation mark opens a cell here and none closes it on its line or properly below; remove or close it".to_owned();
             body.refused.push(refuse(None, first, "quote-not-closed", reason));
             lines.resume_on_next_line(&at);
             continue;
