@@ -8,6 +8,7 @@
 pub mod axis_cone;
 pub mod bingham;
 pub mod concentration;
+pub mod density;
 mod direction;
 pub mod fisher;
 pub mod fold;
@@ -15,6 +16,7 @@ pub mod girdle_arc;
 pub mod harmonics;
 pub mod kent;
 pub mod modes;
+pub mod net_grid;
 pub mod ratios;
 mod registry;
 mod sample;
@@ -22,6 +24,7 @@ mod shape;
 pub mod small_circle;
 pub mod special;
 mod summary;
+pub mod terzaghi;
 pub mod uniformity;
 pub mod watson;
 
