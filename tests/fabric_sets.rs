@@ -76,8 +76,8 @@ fn rows_in_another_order_make_the_same_sets() {
 fn one_cluster_one_girdle_and_noise_are_not_cut_into_sets() {
     let mut rng = ChaCha8Rng::seed_from_u64(5);
     let (mut wrong, mut tries) = (Vec::new(), 0);
-    for n in [30, 100, 400] {
-        for repeat in 0..10 {
+    for n in [30, 100, 300] {
+        for repeat in 0..4 {
             let centre = uniform(&mut rng);
             let oval: Vec<Axis> = (0..n).map(|_| scattered(&mut rng, centre, [20.0, 7.0])).collect();
             let round: Vec<Axis> = (0..n).map(|_| scattered(&mut rng, centre, [12.0, 12.0])).collect();
@@ -97,16 +97,16 @@ fn one_cluster_one_girdle_and_noise_are_not_cut_into_sets() {
             }
         }
     }
-    // Of 120: none would be perfect, a handful is the price of finding real sets.
-    assert!(wrong.len() <= 6, "{} of {tries}: {wrong:?}", wrong.len());
+    // None would be perfect; a few are the price of finding real sets.
+    assert!(wrong.len() <= 3, "{} of {tries}: {wrong:?}", wrong.len());
 }
 
 #[test]
 fn two_sets_in_a_background_are_found() {
     let mut rng = ChaCha8Rng::seed_from_u64(6);
     let mut missed = Vec::new();
-    for n in [40, 150, 5000] {
-        for repeat in 0..8 {
+    for n in [40, 150, 3000] {
+        for repeat in 0..3 {
             let a = uniform(&mut rng);
             let b = loop {
                 let b = uniform(&mut rng);

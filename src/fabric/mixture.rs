@@ -12,11 +12,11 @@ const TIGHTEST: f64 = 2000.0;
 /// A part wider than this (about 30 degrees of scatter) is background, not a set.
 const WIDEST: f64 = 2.0;
 /// Iterations to compare starts, iterations at most of the best, and the gain per reading that ends them.
-const TRIAL: usize = 25;
-const MOST: usize = 300;
-const GAIN: f64 = 1e-9;
+const TRIAL: usize = 12;
+const MOST: usize = 200;
+const GAIN: f64 = 1e-7;
 /// Random starts per number of parts, besides one from the fullest caps.
-const RANDOM_STARTS: usize = 8;
+const RANDOM_STARTS: usize = 6;
 /// Readings per parallel piece; fixed, so that sums do not depend on the number of threads.
 const PIECE: usize = 4096;
 
@@ -69,45 +69,48 @@ impl Mixture {
 /// Unit vectors with weights that sum to the effective number, in an order that rows do not decide.
 pub type Data = Vec<(Vector3<f64>, f64)>;
 
-/// What one pass over the data gathers for each part: weight and tensor.
+/// What one pass over the data gathers.
 #[derive(Clone)]
 struct Gathered {
-    parts: Vec<(f64, Matrix3<f64>)>,
+    /// For each part its weight, then xx, xy, xz, yy, yz, zz.
+    parts: Vec<[f64; 7]>,
     uniform: f64,
     log_likelihood: f64,
 }
 
 fn gather(data: &Data, m: &Mixture) -> Gathered {
-    let empty = Gathered { parts: vec![(0.0, Matrix3::zeros()); m.parts.len()], uniform: 0.0, log_likelihood: 0.0 };
-    let pieces: Vec<Gathered> = data
-        .par_chunks(PIECE)
-        .map(|piece| {
-            let mut sums = empty.clone();
-            let mut densities = vec![0.0; m.parts.len()];
-            for (v, w) in piece {
-                let mut total = m.uniform;
-                for (d, part) in densities.iter_mut().zip(&m.parts) {
-                    *d = part.density(v);
-                    total += *d;
-                }
-                // A point that every part calls impossible counts for none of them.
-                let total = total.max(1e-300);
-                let outer = v * v.transpose();
-                for (sum, d) in sums.parts.iter_mut().zip(&densities) {
-                    let r = w * d / total;
-                    sum.0 += r;
-                    sum.1 += outer * r;
-                }
-                sums.uniform += w * m.uniform / total;
-                sums.log_likelihood += w * total.ln();
+    let empty = Gathered { parts: vec![[0.0; 7]; m.parts.len()], uniform: 0.0, log_likelihood: 0.0 };
+    let one = |piece: &[(Vector3<f64>, f64)]| {
+        let mut sums = empty.clone();
+        let mut densities = vec![0.0; m.parts.len()];
+        for (v, w) in piece {
+            let mut total = m.uniform;
+            for (d, part) in densities.iter_mut().zip(&m.parts) {
+                *d = part.density(v);
+                total += *d;
             }
-            sums
-        })
-        .collect();
-    pieces.into_iter().fold(empty, |mut all, piece| {
+            // A point that every part calls impossible counts for none of them.
+            let total = total.max(1e-300);
+            let scale = w / total;
+            let terms = [1.0, v.x * v.x, v.x * v.y, v.x * v.z, v.y * v.y, v.y * v.z, v.z * v.z];
+            for (sum, d) in sums.parts.iter_mut().zip(&densities) {
+                let r = scale * d;
+                for (s, t) in sum.iter_mut().zip(terms) {
+                    *s += r * t;
+                }
+            }
+            sums.uniform += scale * m.uniform;
+            sums.log_likelihood += w * total.ln();
+        }
+        sums
+    };
+    if data.len() <= PIECE {
+        return one(data);
+    }
+    let pieces: Vec<Gathered> = data.par_chunks(PIECE).map(one).collect();
+    pieces.into_iter().fold(empty.clone(), |mut all, piece| {
         for (a, b) in all.parts.iter_mut().zip(piece.parts) {
-            a.0 += b.0;
-            a.1 += b.1;
+            a.iter_mut().zip(b).for_each(|(a, b)| *a += b);
         }
         all.uniform += piece.uniform;
         all.log_likelihood += piece.log_likelihood;
@@ -117,19 +120,19 @@ fn gather(data: &Data, m: &Mixture) -> Gathered {
 
 fn step(data: &Data, m: &Mixture) -> Mixture {
     let sums = gather(data, m);
-    let total = sums.uniform + sums.parts.iter().map(|p| p.0).sum::<f64>();
+    let total = sums.uniform + sums.parts.iter().map(|p| p[0]).sum::<f64>();
     let parts = sums
         .parts
         .iter()
         .zip(&m.parts)
-        .map(|((weight, tensor), old)| {
-            if *weight <= 1e-9 * total {
+        .map(|(&[weight, xx, xy, xz, yy, yz, zz], old)| {
+            if weight <= 1e-9 * total {
                 return Part { share: 0.0, ..*old };
             }
-            let SymmetricEigen { eigenvalues, eigenvectors } = (tensor / *weight).symmetric_eigen();
+            let tensor = Matrix3::new(xx, xy, xz, xy, yy, yz, xz, yz, zz) / weight;
+            let SymmetricEigen { eigenvalues, eigenvectors } = tensor.symmetric_eigen();
             let first = eigenvalues.imax();
-            let kappa = watson::bipolar([eigenvalues[first].min(1.0), 0.0, 0.0])
-                .map_or(TIGHTEST, |w| w.kappa.clamp(WIDEST, TIGHTEST));
+            let kappa = watson::quick_bipolar(eigenvalues[first]).clamp(WIDEST, TIGHTEST);
             Part::new(weight / total, eigenvectors.column(first).into_owned(), kappa)
         })
         .collect();

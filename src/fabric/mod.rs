@@ -7,6 +7,7 @@
 
 pub mod axis_cone;
 pub mod bingham;
+pub mod bootstrap;
 pub mod concentration;
 pub mod density;
 mod direction;

@@ -16,7 +16,7 @@ pub const LEAST_IN_SET: usize = 5;
 pub const MOST_SETS: usize = 7;
 
 /// Readings used at most in the search; all of them then take part in the final fit.
-const MOST_SEARCHED: usize = 3000;
+const MOST_SEARCHED: usize = 2000;
 /// Parts are one set where the density between them stays above this share of the lesser peak.
 const DIP: f64 = 0.7;
 
