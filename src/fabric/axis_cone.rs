@@ -2,7 +2,7 @@
 
 use super::sample::Unit;
 use crate::orientation::{Axis, Eigen, ExactSum};
-use nalgebra::{Matrix2, SymmetricEigen, Vector3};
+use nalgebra::{Matrix2, SymmetricEigen, Vector2, Vector3};
 
 /// Fewest independent units for a cone that keeps its coverage (own simulation: 0.94 at 5).
 pub const LEAST: f64 = 5.0;
@@ -78,6 +78,17 @@ pub fn cone(units: &[Unit], eigen: &Eigen, which: usize, confidence: f64) -> Res
     }
     let covariance = covariance(units, eigen, which).ok_or(NoCone::Undetermined)?;
     from_covariance(&covariance, small_sample_factor(n, confidence), eigen, which)
+}
+
+/// Whether an axis lies within the confidence region of principal axis `which`, whatever its size. False where
+/// the region is undefined.
+pub fn covers(units: &[Unit], eigen: &Eigen, which: usize, confidence: f64, axis: Axis) -> bool {
+    let n = effective_units(units);
+    let Some(inverse) = covariance(units, eigen, which).and_then(|c| c.try_inverse()) else { return false };
+    let [j, l] = others(which);
+    let [own, a, b] = [which, j, l].map(|k| axis.vector().dot(&eigen.axes[k].vector()));
+    let offset = Vector2::new(a, b) * own.signum();
+    n > 2.0 && offset.dot(&(inverse * offset)) <= small_sample_factor(n, confidence)
 }
 
 /// The cone from a covariance of tangent offsets and a limit for their quadratic form.

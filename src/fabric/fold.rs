@@ -2,6 +2,7 @@
 
 use super::axis_cone::{self, Cone, NoCone};
 use super::sample::{Sample, heaviest, units};
+use super::sets::Sets;
 use super::{girdle_arc, ratios, small_circle, small_circle::SmallCircle};
 use crate::orientation::{Axis, ExactSum};
 use statrs::distribution::{ContinuousCDF, FisherSnedecor};
@@ -189,6 +190,12 @@ pub fn limbs(sample: &Sample, axis: Axis, poles: [Axis; 2]) -> Option<Limbs> {
     let (arc, axial_plane, share) =
         if through_first { (second, halves[1], within) } else { (180.0 - second, halves[0], without) };
     Some(Limbs { interlimb: 180.0 - arc, axial_plane, hinge_share: share / total, hinge_seen })
+}
+
+/// The same where sets were found: the two heaviest whose means lie within 20 degrees of the great circle.
+pub fn limbs_of_sets(sample: &Sample, axis: Axis, sets: &Sets) -> Option<Limbs> {
+    let mut on_circle = sets.sets.iter().map(|s| s.eigen.axes[0]).filter(|m| 90.0 - m.angle_to(axis) <= 20.0);
+    limbs(sample, axis, [on_circle.next()?, on_circle.next()?])
 }
 
 #[cfg(test)]

@@ -7,27 +7,33 @@
 
 pub mod axis_cone;
 pub mod bingham;
+pub mod bootstrap;
 pub mod concentration;
+pub mod density;
 mod direction;
 pub mod fisher;
 pub mod fold;
 pub mod girdle_arc;
 pub mod harmonics;
 pub mod kent;
+mod mixture;
 pub mod modes;
+pub mod net_grid;
 pub mod ratios;
 mod registry;
 mod sample;
+pub mod sets;
 mod shape;
 pub mod small_circle;
 pub mod special;
 mod summary;
+pub mod terzaghi;
 pub mod uniformity;
 pub mod watson;
 
 pub use axis_cone::{Cone, NoCone};
 pub use direction::{Directed, DirectedFabric, Direction, rayleigh_p, summarise_directed};
 pub use registry::{ALL, Statistic};
-pub use sample::{Kind, Sample, SampleError, Stations, Unit, units};
+pub use sample::{Kind, Part, Sample, SampleError, Stations, Unit, units};
 pub use shape::{LEAST_ARC, Shape};
 pub use summary::{Fabric, FabricOptions, LEAST, TRUSTED, summarise};

@@ -113,6 +113,16 @@ impl<'a> Sample<'a> {
         tensor
     }
 
+    /// Some of the readings, copied.
+    pub fn part(&self, members: &[usize]) -> Part {
+        Part {
+            axes: members.iter().map(|&i| self.axes[i]).collect(),
+            weights: self.weights.map(|w| members.iter().map(|&i| w[i]).collect()),
+            stations: self.stations.map(|s| members.iter().map(|&i| s[i]).collect()),
+            kind: self.kind,
+        }
+    }
+
     /// The readings of each station. Within and between stations the order is arbitrary.
     pub fn stations(&self) -> Stations {
         let mut order: Vec<u32> = (0..self.axes.len() as u32).collect();
@@ -125,6 +135,27 @@ impl<'a> Sample<'a> {
             .collect();
         starts.push(order.len());
         Stations { starts, order }
+    }
+}
+
+/// A sample that owns its columns.
+#[derive(Debug, Clone)]
+pub struct Part {
+    axes: Vec<Axis>,
+    weights: Option<Vec<f64>>,
+    stations: Option<Vec<u32>>,
+    kind: Kind,
+}
+
+impl Part {
+    /// The sample they are.
+    pub fn as_sample(&self) -> Sample<'_> {
+        Sample {
+            axes: &self.axes,
+            weights: self.weights.as_deref(),
+            stations: self.stations.as_deref(),
+            kind: self.kind,
+        }
     }
 }
 

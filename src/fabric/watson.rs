@@ -1,6 +1,7 @@
 //! Watson's distribution of axes: one axis of symmetry, about which axes crowd (bipolar) or which they avoid (girdle).
 
 use super::special::integrate;
+use std::sync::OnceLock;
 
 /// A fitted Watson distribution, density exp(kappa (mu.x)^2) / (4 pi M(1/2, 3/2, kappa)) (Watson 1965).
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -76,6 +77,25 @@ fn solve(s: f64) -> Option<f64> {
     Some(k)
 }
 
+/// kappa with D(kappa) = s for s in [1/3, 1], from a table; relative error below 1e-4. For the inner loops of
+/// iterations that end with [`bipolar`] or need no more.
+pub(super) fn quick_bipolar(s: f64) -> f64 {
+    const STEPS: usize = 2048;
+    static TABLE: OnceLock<Vec<f64>> = OnceLock::new();
+    // kappa (1 - s) runs smoothly from 0 to 1.
+    let table = TABLE.get_or_init(|| {
+        (0..=STEPS)
+            .map(|i| {
+                let s = 1.0 / 3.0 + 2.0 / 3.0 * i as f64 / STEPS as f64;
+                if i == STEPS { 1.0 } else { solve(s).map_or(1.0, |k| k * (1.0 - s)) }
+            })
+            .collect()
+    });
+    let place = ((s - 1.0 / 3.0) * 1.5 * STEPS as f64).clamp(0.0, STEPS as f64 - 1e-6);
+    let (i, t) = (place as usize, place.fract());
+    (table[i] + t * (table[i + 1] - table[i])) / (1.0 - s).max(LEAST_GAP)
+}
+
 fn fit(s: f64) -> Option<Watson> {
     let kappa = solve(s)?;
     let log_likelihood = kappa * s - log_kummer(kappa) - (4.0 * std::f64::consts::PI).ln();
@@ -122,6 +142,14 @@ mod tests {
         assert_relative_eq!(log_kummer(5.0).exp(), 17.172_157_773_841, max_relative = 1e-12);
         assert_relative_eq!(log_kummer(-5.0).exp(), 0.395_712_309_611, max_relative = 1e-11);
         assert_relative_eq!(mean_square(0.0), 1.0 / 3.0, max_relative = 1e-13);
+    }
+
+    #[test]
+    fn the_table_is_near_the_solution() {
+        for i in 1..500 {
+            let s = 1.0 / 3.0 + 2.0 / 3.0 * f64::from(i) / 500.3;
+            assert_relative_eq!(quick_bipolar(s), solve(s).unwrap(), max_relative = 1e-4);
+        }
     }
 
     #[test]
