@@ -18,7 +18,7 @@ joined = joined[~joined.index.duplicated()].drop(columns="index_right")
 # Upward poles to planes: east, north, up.
 direction, dip = np.radians(joined.strike.to_numpy() + 90.0), np.radians(joined.dip.to_numpy())
 pole = np.column_stack([np.sin(direction) * np.sin(dip), np.cos(direction) * np.sin(dip), np.cos(dip)])
-groups = joined.groupby(["name", "structure"]).ngroup().to_numpy()
+groups = joined.groupby(["name", "structure"]).ngroup().fillna(-1).to_numpy(int)
 inside = groups >= 0
 count = np.bincount(groups[inside])
 tensor = np.empty((len(count), 3, 3))
