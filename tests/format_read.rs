@@ -125,6 +125,8 @@ fn only_rows_that_are_not_utf8_are_refused() {
     let read = csv(b"id,note\na,ok\nb,gr\xf6\xdfe\nc,\xe2\x82\nd,\xc3\xb6\n");
     assert_eq!(refusals(&read), [(3, "not-utf8"), (4, "not-utf8")]);
     assert_eq!((read.refused[0].column.as_deref(), read.table.rows.clone()), (Some("note"), vec![2, 5]));
+    // Half a character at the end of one cell, its other half at the start of the next.
+    assert_eq!(refusals(&csv(b"id,note\na\xc3,\xb6b\nb,ok\n")), [(2, "not-utf8")]);
     let message = error("stations.csv", b"id,gr\xf6\xdfe\na,1\n");
     assert!(message.contains("header") && message.contains("UTF-8"), "{message}");
 }

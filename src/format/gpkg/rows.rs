@@ -24,14 +24,20 @@ pub(super) fn insert(db: &Connection, layer: &LayerToWrite<'_>, srs_id: i32, pro
     let mut blobs = BlobWriter::new(srs_id, layer.geometry);
     let first_field = 2 + usize::from(has_shape);
     let rows = table.len();
+    let mut bound = vec![Bound::Other; table.fields.len()];
     for row in 0..rows {
         statement.raw_bind_parameter(1, row as i64 + 1)?;
         if has_shape {
             bind_shape(&mut statement, &mut blobs, &table.shapes, row)?;
         }
-        for (i, field) in table.fields.iter().enumerate() {
+        for (i, (field, bound)) in table.fields.iter().zip(&mut bound).enumerate() {
             let place = first_field + i;
-            match field.column.cell(row) {
+            let cell = field.column.cell(row);
+            let was = std::mem::replace(bound, Bound::of(cell));
+            if *bound == was && was != Bound::Other {
+                continue;
+            }
+            match cell {
                 Cell::Null => statement.raw_bind_parameter(place, Null)?,
                 Cell::Text(v) => statement.raw_bind_parameter(place, v)?,
                 Cell::Real(v) => statement.raw_bind_parameter(place, v)?,
@@ -46,6 +52,26 @@ pub(super) fn insert(db: &Connection, layer: &LayerToWrite<'_>, srs_id: i32, pro
     }
     progress.advance((rows % STRIDE) as u64);
     Ok(())
+}
+
+/// What a parameter holds from the row before: SQLite copies each text it is given, so a repeated word is not given
+/// again.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Bound {
+    Null,
+    /// Where in the table the text lies, and how long it is.
+    Text(*const u8, usize),
+    Other,
+}
+
+impl Bound {
+    fn of(cell: Cell<'_>) -> Self {
+        match cell {
+            Cell::Null => Self::Null,
+            Cell::Text(v) => Self::Text(v.as_ptr(), v.len()),
+            _ => Self::Other,
+        }
+    }
 }
 
 fn bind_shape(statement: &mut Statement<'_>, blobs: &mut BlobWriter, shapes: &Shapes, row: usize) -> Result<()> {

@@ -4,6 +4,7 @@ use super::super::{FormatError, Source};
 use super::cause;
 use gdal::vector::{Layer, LayerAccess};
 use gdal::{Dataset, DatasetOptions, GdalOpenFlags};
+use std::collections::BTreeSet;
 use std::path::Path;
 
 /// Opens a source for reading; a zip file opens as what lies in it.
@@ -23,7 +24,7 @@ pub(super) fn dataset(source: &Source, encoding: Option<&str>) -> Result<Dataset
     let extension = Path::new(&source.location).extension().map(|e| e.to_string_lossy().to_lowercase());
     let extension = extension.unwrap_or_default();
     let zipped = extension == "zip" && !source.location.starts_with("/vsi");
-    let location = if zipped { format!("/vsizip/{}", source.location) } else { source.location.clone() };
+    let location = if zipped { within_zip(source)? } else { source.location.clone() };
     Dataset::open_ex(&location, options).map_err(|error| {
         let file = source.path.clone();
         let cause = cause(&error);
@@ -35,6 +36,34 @@ pub(super) fn dataset(source: &Source, encoding: Option<&str>) -> Result<Dataset
             _ => FormatError::Unsupported { file, cause: format!(" ({cause})") },
         }
     })
+}
+
+/// Where in a zip file the data lie; they are often in a folder of it.
+///
+/// # Errors
+/// Where the zip holds data in several places.
+fn within_zip(source: &Source) -> Result<String, FormatError> {
+    const FORMATS: [&str; 8] = ["shp", "gpkg", "geojson", "json", "kml", "gml", "fgb", "tab"];
+    let root = format!("/vsizip/{}", source.location);
+    let mut places = BTreeSet::new();
+    for member in gdal::vsi::read_dir(&root, true).unwrap_or_default() {
+        let extension = member.extension().map(|e| e.to_string_lossy().to_lowercase()).unwrap_or_default();
+        // Archives made on a Mac repeat each name in a folder of its own.
+        if !FORMATS.contains(&extension.as_str()) || member.starts_with("__MACOSX") {
+            continue;
+        }
+        // The shapefiles of a folder are layers of one source.
+        let place = if extension == "shp" { member.parent().map(Path::to_owned).unwrap_or_default() } else { member };
+        places.insert(place.to_string_lossy().into_owned());
+    }
+    match Vec::from_iter(places).as_slice() {
+        [place] if !place.is_empty() => Ok(format!("{root}/{place}")),
+        [] | [_] => Ok(root),
+        several => Err(FormatError::Unsupported {
+            file: source.path.clone(),
+            cause: format!(" (the zip holds data in several places, {}; unpack it)", several.join(" and ")),
+        }),
+    }
 }
 
 /// Finds the layer that was named; else the only one, or the only one with geometry.

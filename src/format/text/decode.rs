@@ -7,8 +7,6 @@ use std::borrow::Cow;
 pub(in crate::format) struct Text<'a> {
     /// The bytes behind the byte-order mark.
     pub bytes: Cow<'a, [u8]>,
-    /// True where all of it is UTF-8.
-    pub valid: bool,
     /// The encoding, where it was another than UTF-8.
     pub encoding: Option<&'static str>,
 }
@@ -18,11 +16,8 @@ pub(in crate::format) fn to_utf8(bytes: &[u8]) -> Text<'_> {
     match Encoding::for_bom(bytes) {
         Some((encoding, mark)) if encoding != UTF_8 => {
             let (text, _) = encoding.decode_without_bom_handling(&bytes[mark..]);
-            Text { bytes: Cow::Owned(text.into_owned().into_bytes()), valid: true, encoding: Some(encoding.name()) }
+            Text { bytes: Cow::Owned(text.into_owned().into_bytes()), encoding: Some(encoding.name()) }
         }
-        mark => {
-            let rest = &bytes[mark.map_or(0, |(_, length)| length)..];
-            Text { bytes: Cow::Borrowed(rest), valid: std::str::from_utf8(rest).is_ok(), encoding: None }
-        }
+        mark => Text { bytes: Cow::Borrowed(&bytes[mark.map_or(0, |(_, length)| length)..]), encoding: None },
     }
 }

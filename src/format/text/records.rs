@@ -23,8 +23,6 @@ pub(super) struct At {
 /// Cuts a text into records.
 pub(super) struct Records<'a> {
     text: &'a [u8],
-    /// All of it is UTF-8.
-    pub valid: bool,
     delimiter: u8,
     reader: csv::Reader<&'a [u8]>,
     /// Where the reader's own count starts.
@@ -38,14 +36,7 @@ impl<'a> Records<'a> {
     pub fn new(text: &'a Text<'_>, dialect: &Dialect) -> Self {
         let bytes: &[u8] = &text.bytes;
         let reader = Self::reader(&bytes[dialect.skip..], dialect.delimiter);
-        Self {
-            text: bytes,
-            valid: text.valid,
-            delimiter: dialect.delimiter,
-            reader,
-            origin: dialect.skip,
-            counted: (0, 1),
-        }
+        Self { text: bytes, delimiter: dialect.delimiter, reader, origin: dialect.skip, counted: (0, 1) }
     }
 
     fn reader(bytes: &[u8], delimiter: u8) -> csv::Reader<&[u8]> {
@@ -155,7 +146,8 @@ pub(super) fn read(
     let mut record = csv::ByteRecord::new();
     while let Some(at) = lines.next(&mut record) {
         let raw = lines.raw(&at);
-        let inner = lines.inner_lines(&at);
+        // Only a quoted cell can hold a line end.
+        let inner = if raw.contains(&b'"') { lines.inner_lines(&at) } else { 0 };
         let runaway = inner > 0 && !well_quoted(raw, lines.delimiter);
         if raw.len() > super::LONGEST && !runaway {
             return Err(FormatError::LineTooLong { file: file.to_owned(), line: at.line, limit: super::LONGEST });
@@ -193,21 +185,23 @@ pub(super) fn read(
             body.refused.push(refuse(None, raw, code, reason));
             continue;
         }
-        if let Some(i) = record.iter().position(|cell| cell.contains(&0)) {
+        if raw.contains(&0) {
+            let i = record.iter().position(|cell| cell.contains(&0));
             let reason = "holds a NUL byte; the file may be damaged here".to_owned();
-            body.refused.push(refuse(Some(i), &record[i], "nul-byte", reason));
+            body.refused.push(refuse(i, i.map_or(raw, |i| &record[i]), "nul-byte", reason));
             continue;
         }
-        if !lines.valid
-            && let Some(i) = record.iter().position(|cell| std::str::from_utf8(cell).is_err())
-        {
+        let whole = |cell: &[u8]| std::str::from_utf8(cell).is_ok();
+        let cells = std::str::from_utf8(record.as_slice());
+        // All cells together may be UTF-8 where one ends in half a character and the next begins with its rest.
+        let Some(cells) = cells.ok().filter(|text| text.is_ascii() || record.iter().all(whole)) else {
+            let i = record.iter().position(|cell| !whole(cell));
             let reason = "is not UTF-8; save the table as CSV in UTF-8".to_owned();
-            body.refused.push(refuse(Some(i), &record[i], "not-utf8", reason));
+            body.refused.push(refuse(i, i.map_or(raw, |i| &record[i]), "not-utf8", reason));
             continue;
-        }
-        for (cell, column) in record.iter().zip(&mut body.columns) {
-            // Checked above, or by the whole text being UTF-8: a delimiter or quote never cuts a character.
-            let cell = std::str::from_utf8(cell).unwrap_or_default().trim();
+        };
+        for (i, column) in body.columns.iter_mut().enumerate() {
+            let cell = record.range(i).and_then(|range| cells.get(range)).unwrap_or_default().trim();
             body.decimals.see(cell);
             column.push(Some(cell).filter(|c| !c.is_empty()));
         }
