@@ -4,8 +4,9 @@ mod fabric_support;
 
 use approx::assert_abs_diff_eq;
 use fabric_support::{poles, rows};
+use homocline::fabric::fold::{fold_axis, limbs_of_sets};
 use homocline::fabric::sets::{SetCount, sets};
-use homocline::fabric::{Kind, Sample};
+use homocline::fabric::{FabricOptions, Kind, Sample, Shape, summarise, with_sets};
 use homocline::orientation::Axis;
 use rand::{RngExt, SeedableRng};
 use rand_chacha::ChaCha8Rng;
@@ -129,6 +130,25 @@ fn two_sets_in_a_background_are_found() {
         }
     }
     assert!(missed.len() <= 1, "{missed:?}");
+}
+
+// Two close joint sets look like a girdle to the tensor; two limbs are one.
+#[test]
+fn sets_correct_the_shape() {
+    let mut rng = ChaCha8Rng::seed_from_u64(8);
+    let means = [Axis::from_trend_plunge(10.0, 20.0), Axis::from_trend_plunge(62.0, 20.0)];
+    let axes: Vec<Axis> = (0..60).map(|i| scattered(&mut rng, means[i % 2], [8.0, 8.0])).collect();
+    let sample = Sample::new(&axes, Kind::Planar);
+    let found = sets(&sample, SetCount::Auto, 0.95, 1);
+    assert_eq!(found.sets.len(), 2);
+    for (folded, shape) in [(false, Shape::Multimodal), (true, Shape::Girdle)] {
+        let options = FabricOptions { folded, ..FabricOptions::default() };
+        let f = with_sets(summarise(&sample, &options), &found, &options);
+        assert_eq!((f.shape, f.mean), (shape, None), "{}", f.note);
+    }
+    let axis = fold_axis(&sample, 0.95).unwrap().axis;
+    let limbs = limbs_of_sets(&sample, axis, &found).unwrap();
+    assert!((limbs.interlimb - 49.0).abs() < 8.0 || (limbs.interlimb - 131.0).abs() < 8.0, "{limbs:?}");
 }
 
 #[test]

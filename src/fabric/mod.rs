@@ -1,4 +1,5 @@
-//! Every statistic of one sample of axes: [`summarise`] answers for poles and unsensed lines.
+//! Every statistic of one sample of axes: [`summarise`] for poles and unsensed lines, [`summarise_directed`] for
+//! what has a sense, [`fold::fold_axis`] and [`fold::limbs`] for girdles, [`sets::sets`] for several maxima.
 //!
 //! Invariants: no file here knows a map, a file or a layer. Angles cross the border in degrees. Sums are
 //! exact, so a result does not depend on the order of readings; the sense of an axis changes nothing. Too few
@@ -36,4 +37,4 @@ pub use direction::{Directed, DirectedFabric, Direction, rayleigh_p, summarise_d
 pub use registry::{ALL, Statistic};
 pub use sample::{Kind, Part, Sample, SampleError, Stations, Unit, units};
 pub use shape::{LEAST_ARC, Shape};
-pub use summary::{Fabric, FabricOptions, LEAST, TRUSTED, summarise};
+pub use summary::{Fabric, FabricOptions, LEAST, TRUSTED, summarise, with_sets};

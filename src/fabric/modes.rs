@@ -15,7 +15,7 @@ const MOST_EXAMINED: usize = 60;
 /// A maximum must hold this share of all readings within its cap, and stand this many standard deviations of
 /// the difference above the lowest point of the best way to any greater one. Simulated: see tests/calibration.rs.
 const LEAST_SHARE: f64 = 0.10;
-const SADDLE: f64 = 3.5;
+const SADDLE: f64 = 3.0;
 
 /// One maximum.
 #[derive(Debug, Clone, Copy, PartialEq)]

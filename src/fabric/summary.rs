@@ -3,6 +3,7 @@
 use super::axis_cone::{self, Cone, NoCone};
 use super::bingham::{self, Bingham};
 use super::sample::{self, Kind, Sample};
+use super::sets::Sets;
 use super::shape::{self, Shape};
 use super::{fisher, ratios, uniformity, watson};
 use crate::orientation::{Axis, Eigen};
@@ -183,6 +184,28 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
         notes.push(format!("weak: fewer than {TRUSTED} independent readings"));
     }
     fabric.note = notes.join("; ");
+    fabric
+}
+
+/// Sets see more than the shape's own look for maxima: where two or more were found that are no limbs of a fold,
+/// the fabric is multimodal and has no mean.
+pub fn with_sets(mut fabric: Fabric, sets: &Sets, options: &FabricOptions) -> Fabric {
+    /// A lesser second set leaves the first one its mean.
+    const LEAST_SHARE: f64 = 0.2;
+    let several = sets.sets.get(1).is_some_and(|second| second.share >= LEAST_SHARE);
+    let limbs = options.folded && fabric.kind == Kind::Planar;
+    let changes = match fabric.shape {
+        Shape::Cluster | Shape::Random => several,
+        Shape::Transitional | Shape::Girdle => several && !limbs,
+        Shape::TooFew | Shape::Multimodal => false,
+    };
+    if changes {
+        let note = format!("{} sets: {}", sets.sets.len(), no_mean(Shape::Multimodal));
+        fabric.note = if fabric.note.is_empty() { note } else { format!("{note}; {}", fabric.note) };
+        fabric.shape = Shape::Multimodal;
+        fabric.mean = None;
+        (fabric.resultant, fabric.fisher_kappa, fabric.fisher_alpha95) = (None, None, None);
+    }
     fabric
 }
 
