@@ -1,7 +1,7 @@
 //! From a stack of structural readings to domains, fabric statistics and map layers that draw right.
 //!
 //! The floors, lowest first; a folder uses only floors below its own (`tests/architecture.rs` keeps this true):
-//! 0 [`notice`], [`orientation`] · 1 [`table`], [`station`], [`crs`], [`fabric`] · 2 [`domain`], [`format`] ·
+//! 0 [`notice`], [`orientation`] · 1 [`table`], [`station`], [`crs`], [`fabric`] · 2 [`domain`], [`mod@format`] ·
 //! 3 [`input`], [`symbol`] · 4 [`layer`], [`style`] · 6 [`job`] · 7 [`cli`].
 
 pub mod cli;
