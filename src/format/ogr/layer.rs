@@ -25,7 +25,7 @@ pub(super) fn read(source: &Source, layer: &mut Layer<'_>, progress: &dyn Progre
     for feature in layer.features() {
         let row = feature.fid().unwrap_or(read);
         read += 1;
-        if read % STRIDE == 0 {
+        if read.is_multiple_of(STRIDE) {
             progress.advance(STRIDE);
         }
         if spatial {
