@@ -184,7 +184,7 @@ fn a_source_that_may_not_be_read_says_so() {
     let folder = tempfile::tempdir().unwrap();
     let path = folder.path().join("stations.csv");
     std::fs::write(&path, "id,x\na,1\n").unwrap();
-    std::fs::set_permissions(&path, std::fs::Permissions::from_mode(0)).unwrap();
+    std::fs::set_permissions(&path, std::fs::Permissions::from_mode(0o000)).unwrap();
     match read(&source(&path), &Silent) {
         // The superuser may read everything.
         Ok(read) => assert_eq!(read.read, 1),

@@ -49,6 +49,7 @@ fn write_whole(target: &Target<'_>, package: &Package<'_>, progress: &dyn Progre
     let specs: Vec<_> = package.layers.iter().map(spec).collect();
     ogr::create(&draft, &package.crs, &specs).map_err(|error| match error {
         CreateError::Crs(cause) => WriteError::Crs { target: target.name(), crs: package.crs.clone(), cause },
+        CreateError::Other(cause) if cause.contains("disk is full") => target.no_space(),
         CreateError::Other(cause) => WriteError::Create { target: target.name(), folder: target.folder_name(), cause },
     })?;
     content::fill(&draft, package, progress).map_err(|(what, cause)| target.content_error(what, &cause))?;
@@ -101,19 +102,21 @@ impl<'a> Target<'a> {
     }
 
     fn folder_error(&self, cause: io::Error) -> WriteError {
-        let (target, folder) = (self.name(), self.folder_name());
         if cause.kind() == io::ErrorKind::StorageFull {
-            WriteError::NoSpace { target, folder }
-        } else {
-            WriteError::Folder { target, folder, cause }
+            return self.no_space();
         }
+        WriteError::Folder { target: self.name(), folder: self.folder_name(), cause }
+    }
+
+    fn no_space(&self) -> WriteError {
+        WriteError::NoSpace { target: self.name(), folder: self.folder_name() }
     }
 
     fn content_error(&self, what: String, cause: &rusqlite::Error) -> WriteError {
-        let (target, folder) = (self.name(), self.folder_name());
         if cause.sqlite_error_code() == Some(rusqlite::ErrorCode::DiskFull) {
-            return WriteError::NoSpace { target, folder };
+            return self.no_space();
         }
+        let (target, folder) = (self.name(), self.folder_name());
         WriteError::Content { target, folder, what, cause: cause.to_string() }
     }
 

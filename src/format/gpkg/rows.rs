@@ -8,8 +8,8 @@ use crate::table::{Cell, Shapes};
 use rusqlite::types::Null;
 use rusqlite::{Connection, Error, Result, Statement};
 
-/// Rows between two reports of progress.
-const STRIDE: usize = 1 << 14;
+/// Rows gathered column by column before they are given row by row: far fewer cache misses than one row at a time.
+const BLOCK: usize = 256;
 
 /// Inserts every row; keys run from 1 in the order of rows.
 pub(super) fn insert(db: &Connection, layer: &LayerToWrite<'_>, srs_id: i32, progress: &dyn Progress) -> Result<()> {
@@ -23,34 +23,37 @@ pub(super) fn insert(db: &Connection, layer: &LayerToWrite<'_>, srs_id: i32, pro
     let mut statement = db.prepare(&sql)?;
     let mut blobs = BlobWriter::new(srs_id, layer.geometry);
     let first_field = 2 + usize::from(has_shape);
-    let rows = table.len();
-    let mut bound = vec![Bound::Other; table.fields.len()];
-    for row in 0..rows {
-        statement.raw_bind_parameter(1, row as i64 + 1)?;
-        if has_shape {
-            bind_shape(&mut statement, &mut blobs, &table.shapes, row)?;
+    let (rows, width) = (table.len(), table.fields.len());
+    let mut bound = vec![Bound::Other; width];
+    let mut block = vec![Cell::Null; BLOCK * width];
+    for start in (0..rows).step_by(BLOCK) {
+        let end = rows.min(start + BLOCK);
+        for (i, field) in table.fields.iter().enumerate() {
+            (start..end).for_each(|row| block[(row - start) * width + i] = field.column.cell(row));
         }
-        for (i, (field, bound)) in table.fields.iter().zip(&mut bound).enumerate() {
-            let place = first_field + i;
-            let cell = field.column.cell(row);
-            let was = std::mem::replace(bound, Bound::of(cell));
-            if *bound == was && was != Bound::Other {
-                continue;
+        for row in start..end {
+            statement.raw_bind_parameter(1, row as i64 + 1)?;
+            if has_shape {
+                bind_shape(&mut statement, &mut blobs, &table.shapes, row)?;
             }
-            match cell {
-                Cell::Null => statement.raw_bind_parameter(place, Null)?,
-                Cell::Text(v) => statement.raw_bind_parameter(place, v)?,
-                Cell::Real(v) => statement.raw_bind_parameter(place, v)?,
-                Cell::Integer(v) => statement.raw_bind_parameter(place, v)?,
-                Cell::Boolean(v) => statement.raw_bind_parameter(place, v)?,
+            let cells = &block[(row - start) * width..][..width];
+            for ((place, &cell), bound) in (first_field..).zip(cells).zip(&mut bound) {
+                let was = std::mem::replace(bound, Bound::of(cell));
+                if *bound == was && was != Bound::Other {
+                    continue;
+                }
+                match cell {
+                    Cell::Null => statement.raw_bind_parameter(place, Null)?,
+                    Cell::Text(v) => statement.raw_bind_parameter(place, v)?,
+                    Cell::Real(v) => statement.raw_bind_parameter(place, v)?,
+                    Cell::Integer(v) => statement.raw_bind_parameter(place, v)?,
+                    Cell::Boolean(v) => statement.raw_bind_parameter(place, v)?,
+                }
             }
+            statement.raw_execute()?;
         }
-        statement.raw_execute()?;
-        if (row + 1) % STRIDE == 0 {
-            progress.advance(STRIDE as u64);
-        }
+        progress.advance((end - start) as u64);
     }
-    progress.advance((rows % STRIDE) as u64);
     Ok(())
 }
 

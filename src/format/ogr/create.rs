@@ -1,6 +1,6 @@
 //! An empty GeoPackage: CRS, tables with key and geometry column, spatial indexes.
 
-use super::{cause, prepare};
+use super::{cause, complaints, prepare};
 use gdal::DriverManager;
 use gdal::cpl::CslStringList;
 use gdal::spatial_ref::SpatialRef;
@@ -60,5 +60,10 @@ pub(in crate::format) fn create(path: &Path, crs: &str, layers: &[LayerSpec<'_>]
             .create_layer(LayerOptions { name: layer.name, srs: Some(&srs), ty, options: Some(&options) })
             .map_err(other)?;
     }
-    dataset.close().map_err(other)
+    dataset.close().map_err(other)?;
+    // GDAL writes much of the file only now, and closing tells of no failure.
+    match complaints().into_iter().find(|c| c.failure) {
+        Some(failure) => Err(CreateError::Other(failure.message)),
+        None => Ok(()),
+    }
 }

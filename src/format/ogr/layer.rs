@@ -25,7 +25,7 @@ pub(super) fn read(source: &Source, layer: &mut Layer<'_>, progress: &dyn Progre
     for feature in layer.features() {
         let row = feature.fid().unwrap_or(read);
         read += 1;
-        if read % STRIDE == 0 {
+        if read.is_multiple_of(STRIDE) {
             progress.advance(STRIDE);
         }
         if spatial {
@@ -45,11 +45,12 @@ pub(super) fn read(source: &Source, layer: &mut Layer<'_>, progress: &dyn Progre
     let complaints = complaints();
     if read == 0 {
         return Err(match complaints.last() {
-            Some(cause) => FormatError::Corrupt { file, format: "a vector layer".into(), cause: cause.clone() },
+            Some(cause) => FormatError::Corrupt { file, format: "a vector layer".into(), cause: cause.message.clone() },
             None => FormatError::NoFeatures { file },
         });
     }
-    let notices = complaints.into_iter().map(|m| Notice::warning("reader-complains", Place::file(file.clone()), m));
+    let notices =
+        complaints.into_iter().map(|c| Notice::warning("reader-complains", Place::file(file.clone()), c.message));
     let mut table = Table::new(file.clone());
     table.fields = fields.into_iter().map(Growing::finish).collect();
     table.shapes = if spatial { shapes.finish() } else { Shapes::None };

@@ -12,11 +12,18 @@ pub(super) use create::{CreateError, LayerSpec, create};
 use super::{FormatError, ReadTable, Source};
 use crate::notice::Progress;
 use std::cell::RefCell;
+use std::path::Path;
 use std::sync::Once;
 
 thread_local! {
     /// What GDAL complained of on this thread since it was last asked.
-    static COMPLAINTS: RefCell<Vec<String>> = const { RefCell::new(Vec::new()) };
+    static COMPLAINTS: RefCell<Vec<Complaint>> = const { RefCell::new(Vec::new()) };
+}
+
+/// A warning or failure in GDAL's words.
+struct Complaint {
+    failure: bool,
+    message: String,
 }
 
 /// Makes GDAL tell us instead of the terminal, and hand out straight lines in place of arcs.
@@ -24,10 +31,12 @@ fn prepare() {
     static ONCE: Once = Once::new();
     ONCE.call_once(|| {
         gdal::config::set_error_handler(|kind, _, message| {
-            if !matches!(kind, gdal::errors::CplErrType::Debug | gdal::errors::CplErrType::None) {
+            use gdal::errors::CplErrType::{Debug, Failure, Fatal, None};
+            if !matches!(kind, Debug | None) {
+                let failure = matches!(kind, Failure | Fatal);
                 COMPLAINTS.with_borrow_mut(|list| {
-                    if list.len() < 100 && !list.iter().any(|m| m == message) {
-                        list.push(message.to_owned());
+                    if list.len() < 100 && !list.iter().any(|c| c.message == message) {
+                        list.push(Complaint { failure, message: message.to_owned() });
                     }
                 });
             }
@@ -38,20 +47,21 @@ fn prepare() {
 }
 
 /// What GDAL complained of on this thread since the last call.
-fn complaints() -> Vec<String> {
+fn complaints() -> Vec<Complaint> {
     COMPLAINTS.with_borrow_mut(std::mem::take)
 }
 
 /// What GDAL complained of last, else the error itself.
 fn cause(error: &gdal::errors::GdalError) -> String {
-    complaints().pop().unwrap_or_else(|| error.to_string())
+    complaints().pop().map_or_else(|| error.to_string(), |c| c.message)
 }
 
 /// True for a location that is no path of the file system: a GDAL virtual path, a database or a web address.
 pub(super) fn is_connection(location: &str) -> bool {
     let scheme = location.split_once(':').map_or("", |(scheme, _)| scheme);
-    // One letter is a drive.
-    location.starts_with("/vsi") || (scheme.len() > 1 && scheme.bytes().all(|b| b.is_ascii_alphanumeric() || b == b'_'))
+    // One letter is a drive; a file's own name may hold a colon.
+    let is_scheme = scheme.len() > 1 && scheme.bytes().all(|b| b.is_ascii_alphanumeric() || b == b'_');
+    location.starts_with("/vsi") || (is_scheme && !Path::new(location).exists())
 }
 
 /// Reads a layer.

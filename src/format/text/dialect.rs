@@ -63,7 +63,7 @@ fn score(sample: &[u8], delimiter: u8) -> Option<(usize, usize)> {
         }
     }
     let width = width.filter(|&w| w > 1)?;
-    Some((if seen == 0 { 1000 } else { alike * 1000 / seen }, width))
+    Some(((alike * 1000usize).checked_div(seen).unwrap_or(1000), width))
 }
 
 #[cfg(test)]

@@ -157,7 +157,7 @@ pub(super) fn read(
             continue;
         }
         body.read += 1;
-        if body.read % STRIDE == 0 {
+        if body.read.is_multiple_of(STRIDE) {
             progress.advance(STRIDE);
         }
         let refuse = |column: Option<usize>, value: &[u8], code, reason| Refusal {
