@@ -5,6 +5,7 @@ use super::sample::Sample;
 use super::{bingham, fisher};
 use crate::orientation::{Axis, Eigen};
 use nalgebra::{Matrix3, SymmetricEigen, Vector3};
+use rayon::prelude::*;
 
 /// Fewest effective readings for sets to be looked for, and fewest in one to trust it (judgement).
 pub const LEAST: f64 = 20.0;
@@ -14,6 +15,9 @@ pub const TRUSTED: usize = 15;
 pub const LEAST_IN_SET: usize = 5;
 /// Most sets looked for.
 pub const MOST_SETS: usize = 7;
+
+/// Most sets that may be asked for.
+pub const LARGEST_COUNT: usize = 32;
 
 /// Readings used at most in the search; all of them then take part in the final fit.
 const MOST_SEARCHED: usize = 2000;
@@ -78,6 +82,11 @@ pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Set
         return Sets::none(sample.len(), format!("sets need {LEAST} readings, these count as {n:.1}"));
     }
     if let SetCount::Given(k) = count
+        && k > LARGEST_COUNT
+    {
+        return Sets::none(sample.len(), format!("{k} sets are more than the {LARGEST_COUNT} that can be told apart"));
+    }
+    if let SetCount::Given(k) = count
         && sample.len() < LEAST_IN_SET * k
     {
         return Sets::none(
@@ -130,7 +139,7 @@ pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Set
 fn ordered(sample: &Sample, n: f64) -> Data {
     let scale = n / sample.tensor().weight();
     let mut data: Data = sample.readings().map(|(a, w)| (a.vector(), w * scale)).collect();
-    data.sort_unstable_by(|(a, v), (b, w)| {
+    data.par_sort_unstable_by(|(a, v), (b, w)| {
         a.z.total_cmp(&b.z).then(a.y.total_cmp(&b.y)).then(a.x.total_cmp(&b.x)).then(v.total_cmp(w))
     });
     data
@@ -204,14 +213,14 @@ fn joined(m: &Mixture) -> Vec<usize> {
 fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> Sets {
     let likeliest = |a: &Axis| {
         let v = a.vector();
-        let mut sums = vec![0.0; m.parts.len()];
+        let mut sums = [0.0; LARGEST_COUNT];
         for (part, &g) in m.parts.iter().zip(groups) {
             sums[g] += part.density(&v);
         }
-        let best = (0..sums.len()).reduce(|a, b| if sums[b] > sums[a] { b } else { a })?;
+        let best = (0..m.parts.len()).reduce(|a, b| if sums[b] > sums[a] { b } else { a })?;
         (sums[best] > m.uniform).then_some(best)
     };
-    let raw: Vec<Option<usize>> = sample.axes().iter().map(likeliest).collect();
+    let raw: Vec<Option<usize>> = sample.axes().par_iter().map(likeliest).collect();
     let total = sample.tensor().weight();
     let mut found: Vec<(usize, AxisSet)> = (0..m.parts.len())
         .filter_map(|g| {

@@ -164,8 +164,11 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
         ));
     } else {
         fabric.uniformity_p = Some(p);
-        fabric.mean_cone = cones[0].ok();
-        fabric.third_cone = cones[1].ok();
+        // Axes of what may be noise have no direction to be sure of.
+        if shape != Shape::Random {
+            fabric.mean_cone = cones[0].ok();
+            fabric.third_cone = cones[1].ok();
+        }
     }
     match (shape.has_mean(), &cones[0]) {
         (true, Err(NoCone::Undetermined)) => {
