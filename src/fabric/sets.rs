@@ -73,7 +73,7 @@ impl Sets {
 /// With [`SetCount::Auto`] the number of parts is the one of least BIC, parts without a gap in the density
 /// between them are one set, and a single Bingham distribution (which may be a girdle or an oval cluster)
 /// with background is preferred where its BIC is less: then there are no sets to tell apart, and none are returned.
-pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Sets {
+pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
     let n = sample.tensor().effective_count();
     if count == SetCount::Given(0) || sample.is_empty() {
         return Sets::none(sample.len(), "no sets asked for");
@@ -128,7 +128,7 @@ pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Set
         }
     };
     let chosen = if stride > 1 { mixture::refine(&data, chosen) } else { chosen };
-    let result = assigned(sample, &chosen, &groups, confidence);
+    let result = assigned(sample, &chosen, &groups);
     if count == SetCount::Auto && result.sets.len() < 2 {
         return Sets::none(sample.len(), "one maximum: no sets");
     }
@@ -210,7 +210,7 @@ fn joined(m: &Mixture) -> Vec<usize> {
 }
 
 /// Members of each set by the likeliest part (parts of one set together), then the sets' own statistics.
-fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> Sets {
+fn assigned(sample: &Sample, m: &Mixture, groups: &[usize]) -> Sets {
     let likeliest = |a: &Axis| {
         let v = a.vector();
         let mut sums = [0.0; LARGEST_COUNT];
@@ -225,10 +225,7 @@ fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> 
     let mut found: Vec<(usize, AxisSet)> = (0..m.parts.len())
         .filter_map(|g| {
             let members: Vec<usize> = (0..raw.len()).filter(|&i| raw[i] == Some(g)).collect();
-            (members.len() >= LEAST_IN_SET)
-                .then(|| described(sample, &members, total, confidence))
-                .flatten()
-                .map(|s| (g, s))
+            (members.len() >= LEAST_IN_SET).then(|| described(sample, &members, total)).flatten().map(|s| (g, s))
         })
         .collect();
     found.sort_by(|(_, a), (_, b)| {
@@ -243,7 +240,7 @@ fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> 
     Sets { sets: found.into_iter().map(|(_, s)| s).collect(), member, note }
 }
 
-fn described(sample: &Sample, members: &[usize], total: f64, confidence: f64) -> Option<AxisSet> {
+fn described(sample: &Sample, members: &[usize], total: f64) -> Option<AxisSet> {
     let part = sample.part(members);
     let own = part.as_sample();
     let tensor = own.tensor();
@@ -254,7 +251,7 @@ fn described(sample: &Sample, members: &[usize], total: f64, confidence: f64) ->
     if members.len() < TRUSTED {
         notes.push(format!("weak: {} readings, fewer than {TRUSTED}", members.len()));
     }
-    let fisher_alpha95 = votes.alpha(confidence);
+    let fisher_alpha95 = votes.alpha(0.95);
     if fisher_alpha95.is_none() {
         notes.push(format!("alpha95 needs 3 stations, these count as {:.1}", votes.n));
     }
