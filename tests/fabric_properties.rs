@@ -1,6 +1,7 @@
 //! What must hold for any sample: order, sense and splits change nothing, and turning the data turns the answer.
 
-use homocline::fabric::{Fabric, FabricOptions, Kind, Sample, summarise};
+use homocline::fabric::fold::fold_axis;
+use homocline::fabric::{Directed, Direction, Fabric, FabricOptions, Kind, Sample, summarise, summarise_directed};
 use homocline::orientation::{Axis, OrientationTensor};
 use nalgebra::{Rotation3, Vector3};
 use proptest::prelude::*;
@@ -103,6 +104,37 @@ proptest! {
     }
 
     #[test]
+    fn folds_and_directions_do_not_hang_on_the_order(rows in readings(40), turn in 0usize..40) {
+        let mut other = rows.clone();
+        other.rotate_left(turn.min(rows.len()));
+        let fold = |rows: &[(f64, f64, f64, u32)]| {
+            let axes: Vec<Axis> = rows.iter().map(|r| axis(r.0, r.1)).collect();
+            fold_axis(&Sample::new(&axes, Kind::Planar), 0.95)
+        };
+        prop_assert_eq!(fold(&rows), fold(&other));
+        if let Some(f) = fold(&rows) {
+            prop_assert!(f.rms_misfit.is_finite() && f.cylindricity.is_finite());
+            prop_assert!(f.cone_test.is_none_or(|t| t.f.is_finite() && t.p.is_finite() && t.circle.half_angle.is_finite()));
+        }
+        let directed = |rows: &[(f64, f64, f64, u32)]| {
+            let directions: Vec<Direction> = rows.iter().map(|r| Direction::from_trend_plunge(r.0, r.1 - 30.0)).collect();
+            let weights: Vec<f64> = rows.iter().map(|r| r.2).collect();
+            let stations: Vec<u32> = rows.iter().map(|r| r.3).collect();
+            let sample = Directed {
+                directions: &directions,
+                weights: Some(&weights),
+                stations: Some(&stations),
+                kind: Kind::Linear,
+            };
+            summarise_directed(&sample, &FabricOptions::default()).unwrap()
+        };
+        let d = directed(&rows);
+        prop_assert_eq!(&d, &directed(&other));
+        prop_assert!(d.rayleigh_p.is_none_or(f64::is_finite));
+        prop_assert!(d.kent.is_none_or(|k| k.kappa.is_finite() && k.beta.is_finite() && k.log_likelihood.is_finite()));
+    }
+
+    #[test]
     fn split_and_merge_give_the_whole(rows in readings(80), cut in 0usize..80) {
         let axes: Vec<(Axis, f64)> = rows.iter().map(|&(t, p, w, _)| (axis(t, p), w)).collect();
         let sum = |part: &[(Axis, f64)]| {
@@ -144,5 +176,21 @@ fn tiny_and_degenerate_samples_are_answered() {
             _ => "cluster",
         };
         assert_eq!(f.shape.word(), want, "{name}: {}", f.note);
+    }
+}
+
+#[test]
+fn equal_and_opposed_directions_are_answered() {
+    let d = Direction::from_trend_plunge;
+    for directions in [vec![], vec![d(10.0, -20.0); 8], [d(10.0, -20.0), d(190.0, 20.0)].repeat(4)] {
+        let sample = Directed { directions: &directions, weights: None, stations: None, kind: Kind::Linear };
+        let f = summarise_directed(&sample, &FabricOptions::default()).unwrap();
+        assert!(numbers(&f.fabric).iter().all(|v| v.is_finite()));
+        assert_eq!(f.kent, None);
+        match (directions.len(), f.mean) {
+            (8, Some(mean)) => assert!(mean.angle_to(d(10.0, -20.0)) < 1e-9 && mean.plunge() < 0.0),
+            (_, mean) => assert_eq!(mean, None),
+        }
+        assert!(!f.fabric.note.is_empty());
     }
 }

@@ -53,7 +53,7 @@ pub fn log_constant(k2: f64, k3: f64) -> f64 {
 /// likelihood then rises without bound).
 pub fn fit(s: [f64; 3]) -> Option<Bingham> {
     let [s1, s2, s3] = s;
-    if !(s3 > LEAST_S3) {
+    if s3.is_nan() || s3 <= LEAST_S3 {
         return None;
     }
     // Concentrated limit for k3; k2 fades to 0 as S2 nears S1.

@@ -130,7 +130,7 @@ pub fn summarise_directed(sample: &Directed, options: &FabricOptions) -> Result<
         if fabric.shape.has_mean() {
             fabric.resultant = Some(all.length);
             fabric.fisher_kappa = all.kappa();
-            fabric.fisher_alpha95 = by_station.alpha(options.confidence);
+            fabric.fisher_alpha95 = by_station.alpha(0.95);
             result.kappa_interval = concentration::interval(&by_station, options.confidence);
             result.kent = kent::fit(&votes);
         }

@@ -163,7 +163,7 @@ pub fn limbs(sample: &Sample, axis: Axis, poles: [Axis; 2]) -> Option<Limbs> {
     let f = normal.cross(&e);
     let turn = |a: Axis| a.vector().dot(&f).atan2(a.vector().dot(&e)).to_degrees().rem_euclid(180.0);
     let second = turn(poles[1]);
-    if second < 1e-9 || second > 180.0 - 1e-9 {
+    if !(1e-9..=180.0 - 1e-9).contains(&second) {
         return None;
     }
     let scale = heaviest(sample);

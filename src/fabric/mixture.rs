@@ -187,9 +187,9 @@ pub fn fit(data: &Data, parts: usize, seed: u64) -> Mixture {
     best.map_or_else(|| fit(data, 0, seed), |b| iterate(data, b, MOST))
 }
 
-/// Continues a fit on more of the data.
+/// A few more steps of a fit on more of the data.
 pub fn refine(data: &Data, m: Mixture) -> Mixture {
-    iterate(data, m, MOST / 5)
+    iterate(data, m, 6)
 }
 
 /// Centres of caps of 15 degrees, each the fullest among readings not yet covered.

@@ -5,6 +5,7 @@ use super::sample::Sample;
 use super::{bingham, fisher};
 use crate::orientation::{Axis, Eigen};
 use nalgebra::{Matrix3, SymmetricEigen, Vector3};
+use rayon::prelude::*;
 
 /// Fewest effective readings for sets to be looked for, and fewest in one to trust it (judgement).
 pub const LEAST: f64 = 20.0;
@@ -14,6 +15,9 @@ pub const TRUSTED: usize = 15;
 pub const LEAST_IN_SET: usize = 5;
 /// Most sets looked for.
 pub const MOST_SETS: usize = 7;
+
+/// Most sets that may be asked for.
+pub const LARGEST_COUNT: usize = 32;
 
 /// Readings used at most in the search; all of them then take part in the final fit.
 const MOST_SEARCHED: usize = 2000;
@@ -69,13 +73,18 @@ impl Sets {
 /// With [`SetCount::Auto`] the number of parts is the one of least BIC, parts without a gap in the density
 /// between them are one set, and a single Bingham distribution (which may be a girdle or an oval cluster)
 /// with background is preferred where its BIC is less: then there are no sets to tell apart, and none are returned.
-pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Sets {
+pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
     let n = sample.tensor().effective_count();
     if count == SetCount::Given(0) || sample.is_empty() {
         return Sets::none(sample.len(), "no sets asked for");
     }
     if count == SetCount::Auto && n < LEAST - 1e-9 {
         return Sets::none(sample.len(), format!("sets need {LEAST} readings, these count as {n:.1}"));
+    }
+    if let SetCount::Given(k) = count
+        && k > LARGEST_COUNT
+    {
+        return Sets::none(sample.len(), format!("{k} sets are more than the {LARGEST_COUNT} that can be told apart"));
     }
     if let SetCount::Given(k) = count
         && sample.len() < LEAST_IN_SET * k
@@ -119,7 +128,7 @@ pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Set
         }
     };
     let chosen = if stride > 1 { mixture::refine(&data, chosen) } else { chosen };
-    let result = assigned(sample, &chosen, &groups, confidence);
+    let result = assigned(sample, &chosen, &groups);
     if count == SetCount::Auto && result.sets.len() < 2 {
         return Sets::none(sample.len(), "one maximum: no sets");
     }
@@ -130,7 +139,7 @@ pub fn sets(sample: &Sample, count: SetCount, confidence: f64, seed: u64) -> Set
 fn ordered(sample: &Sample, n: f64) -> Data {
     let scale = n / sample.tensor().weight();
     let mut data: Data = sample.readings().map(|(a, w)| (a.vector(), w * scale)).collect();
-    data.sort_unstable_by(|(a, v), (b, w)| {
+    data.par_sort_unstable_by(|(a, v), (b, w)| {
         a.z.total_cmp(&b.z).then(a.y.total_cmp(&b.y)).then(a.x.total_cmp(&b.x)).then(v.total_cmp(w))
     });
     data
@@ -201,25 +210,22 @@ fn joined(m: &Mixture) -> Vec<usize> {
 }
 
 /// Members of each set by the likeliest part (parts of one set together), then the sets' own statistics.
-fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> Sets {
+fn assigned(sample: &Sample, m: &Mixture, groups: &[usize]) -> Sets {
     let likeliest = |a: &Axis| {
         let v = a.vector();
-        let mut sums = vec![0.0; m.parts.len()];
+        let mut sums = [0.0; LARGEST_COUNT];
         for (part, &g) in m.parts.iter().zip(groups) {
             sums[g] += part.density(&v);
         }
-        let best = (0..sums.len()).reduce(|a, b| if sums[b] > sums[a] { b } else { a })?;
+        let best = (0..m.parts.len()).reduce(|a, b| if sums[b] > sums[a] { b } else { a })?;
         (sums[best] > m.uniform).then_some(best)
     };
-    let raw: Vec<Option<usize>> = sample.axes().iter().map(likeliest).collect();
+    let raw: Vec<Option<usize>> = sample.axes().par_iter().map(likeliest).collect();
     let total = sample.tensor().weight();
     let mut found: Vec<(usize, AxisSet)> = (0..m.parts.len())
         .filter_map(|g| {
             let members: Vec<usize> = (0..raw.len()).filter(|&i| raw[i] == Some(g)).collect();
-            (members.len() >= LEAST_IN_SET)
-                .then(|| described(sample, &members, total, confidence))
-                .flatten()
-                .map(|s| (g, s))
+            (members.len() >= LEAST_IN_SET).then(|| described(sample, &members, total)).flatten().map(|s| (g, s))
         })
         .collect();
     found.sort_by(|(_, a), (_, b)| {
@@ -234,7 +240,7 @@ fn assigned(sample: &Sample, m: &Mixture, groups: &[usize], confidence: f64) -> 
     Sets { sets: found.into_iter().map(|(_, s)| s).collect(), member, note }
 }
 
-fn described(sample: &Sample, members: &[usize], total: f64, confidence: f64) -> Option<AxisSet> {
+fn described(sample: &Sample, members: &[usize], total: f64) -> Option<AxisSet> {
     let part = sample.part(members);
     let own = part.as_sample();
     let tensor = own.tensor();
@@ -245,7 +251,7 @@ fn described(sample: &Sample, members: &[usize], total: f64, confidence: f64) ->
     if members.len() < TRUSTED {
         notes.push(format!("weak: {} readings, fewer than {TRUSTED}", members.len()));
     }
-    let fisher_alpha95 = votes.alpha(confidence);
+    let fisher_alpha95 = votes.alpha(0.95);
     if fisher_alpha95.is_none() {
         notes.push(format!("alpha95 needs 3 stations, these count as {:.1}", votes.n));
     }

@@ -47,6 +47,10 @@ impl Shape {
 /// commonly taken.
 pub const LEAST_ARC: f64 = 60.0;
 
+/// Below this many readings a fabric with a known mean axis is not called a girdle: of five readings of a round
+/// cluster one sample in ten looks like one (own simulation).
+pub const LEAST_IN_GIRDLE: f64 = 8.0;
+
 /// The form (which side of K = 1) is told at this confidence. A label, not a test: at 0.95 a cluster of 50 with
 /// K = 2 would go unnamed.
 const FORM_CONFIDENCE: f64 = 0.68;
@@ -78,7 +82,7 @@ pub(super) struct Evidence<'a> {
 ///    and are poles of folded surfaces, they are limbs: *girdle*.
 /// 3. Otherwise ln S1 + ln S3 - 2 ln S2, which is positive exactly where Woodcock's K > 1, with its
 ///    confidence interval from the stations: above zero, or e3 undetermined: *cluster*; below zero, or e1
-///    undetermined, on an arc of 60 degrees or more: *girdle*; neither: *transitional* (on a short arc and
+///    undetermined, on an arc of 60 degrees or more and with 8 readings: *girdle*; neither: *transitional* (on a short arc and
 ///    below ten readings: *cluster*).
 pub(super) fn classify(e: &Evidence) -> (Shape, Vec<String>) {
     let mut notes = Vec::new();
@@ -133,7 +137,8 @@ pub(super) fn classify(e: &Evidence) -> (Shape, Vec<String>) {
 const ON_CIRCLE: f64 = 20.0;
 
 fn girdle_or_band(e: &Evidence, notes: &mut Vec<String>) -> Shape {
-    if girdle_arc::arc(e.sample, e.eigen, 0.9) >= LEAST_ARC || e.first.is_err() {
+    let enough = super::axis_cone::effective_units(e.units) >= LEAST_IN_GIRDLE - 1e-9;
+    if e.first.is_err() || (enough && girdle_arc::arc(e.sample, e.eigen, 0.9) >= LEAST_ARC) {
         Shape::Girdle
     } else {
         band(e, notes)

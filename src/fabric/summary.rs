@@ -63,7 +63,7 @@ pub struct Fabric {
     pub resultant: Option<f64>,
     /// Fisher's kappa of these, (n-1)/(n-R).
     pub fisher_kappa: Option<f64>,
-    /// Fisher's cone of the mean of the stations' directions.
+    /// Fisher's cone of the mean of the stations' directions, at 0.95 whatever the confidence asked for.
     pub fisher_alpha95: Option<f64>,
     /// Watson's kappa, the likelier of bipolar (positive, about e1) and girdle (negative, away from e3).
     pub watson_kappa: Option<f64>,
@@ -164,8 +164,11 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
         ));
     } else {
         fabric.uniformity_p = Some(p);
-        fabric.mean_cone = cones[0].ok();
-        fabric.third_cone = cones[1].ok();
+        // Axes of what may be noise have no direction to be sure of.
+        if shape != Shape::Random {
+            fabric.mean_cone = cones[0].ok();
+            fabric.third_cone = cones[1].ok();
+        }
     }
     match (shape.has_mean(), &cones[0]) {
         (true, Err(NoCone::Undetermined)) => {
@@ -175,7 +178,7 @@ pub fn summarise(sample: &Sample, options: &FabricOptions) -> Fabric {
         (false, _) => notes.push(no_mean(shape).into()),
     }
     if shape == Shape::Cluster {
-        fisher_fields(&mut fabric, sample, eigen.axes[0], options.confidence, few_stations, &mut notes);
+        fisher_fields(&mut fabric, sample, eigen.axes[0], few_stations, &mut notes);
     }
     if shape == Shape::Transitional {
         notes.push("no Fisher statistics: the scatter is elongate, not round about its mean".into());
@@ -209,7 +212,7 @@ pub fn with_sets(mut fabric: Fabric, sets: &Sets, options: &FabricOptions) -> Fa
     fabric
 }
 
-fn fisher_fields(f: &mut Fabric, sample: &Sample, e1: Axis, confidence: f64, few: bool, notes: &mut Vec<String>) {
+fn fisher_fields(f: &mut Fabric, sample: &Sample, e1: Axis, few: bool, notes: &mut Vec<String>) {
     let all = fisher::axial_resultant(sample, e1);
     f.resultant = Some(all.length);
     f.fisher_kappa = all.kappa();
@@ -217,7 +220,7 @@ fn fisher_fields(f: &mut Fabric, sample: &Sample, e1: Axis, confidence: f64, few
         notes.push("all axes are parallel, so Fisher kappa is infinite".into());
     }
     if !few {
-        f.fisher_alpha95 = fisher::station_resultant(sample, &sample.stations(), e1).alpha(confidence);
+        f.fisher_alpha95 = fisher::station_resultant(sample, &sample.stations(), e1).alpha(0.95);
     }
 }
 

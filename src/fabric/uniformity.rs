@@ -63,8 +63,7 @@ const RATIO_LIMITS: [(f64, f64, f64); 17] = [
 /// Interpolated in sqrt(n) ln(S1/S3), which hardly varies (8.0 at n = 5, 5.2 at 50, 5.0 at 500), linearly in
 /// 1/n; beyond the table the last two rows are carried on. `None` below 5.
 pub fn ratio_limit(n: f64, strict: bool) -> Option<f64> {
-    // Not `n < LEAST`, so that NaN is refused as well.
-    if !(n >= LEAST) {
+    if n.is_nan() || n < LEAST {
         return None;
     }
     let scaled = |row: (f64, f64, f64)| row.0.sqrt() * if strict { row.2 } else { row.1 }.ln();
