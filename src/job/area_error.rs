@@ -38,7 +38,7 @@ pub enum AreaFileError {
         /// Line, where it could be found.
         line: Option<usize>,
         /// The key and the nearest known one.
-        unknown: UnknownKey,
+        unknown: Box<UnknownKey>,
     },
     /// A value that is typed right but makes no sense.
     #[error("{file}: {key} = {value}: {message}")]

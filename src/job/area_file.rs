@@ -320,7 +320,7 @@ impl AreaFile {
         let table: toml::Table = toml::from_str(text).map_err(|e| AreaFileError::syntax(&file, text, &e))?;
         if let Some(unknown) = first_unknown(&table) {
             let line = line_of_key(text, &unknown.key);
-            return Err(AreaFileError::UnknownKey { file, line, unknown });
+            return Err(AreaFileError::UnknownKey { file, line, unknown: Box::new(unknown) });
         }
         toml::from_str(text).map_err(|e| AreaFileError::syntax(&file, text, &e))
     }

@@ -140,13 +140,16 @@ fn domains(
     }
 }
 
+/// A source's shapes in map coordinates, one per row.
+type MapShapes = Vec<Option<Geometry<f64>>>;
+
 /// A polygon source's table, with its shapes on the map.
 fn shapes(
     located: &Located,
     map: &MapCrs,
     notices: &mut Vec<Notice>,
     progress: &dyn Progress,
-) -> Result<(Table, Vec<Option<Geometry<f64>>>), JobError> {
+) -> Result<(Table, MapShapes), JobError> {
     let read = read(located, progress)?;
     notices.extend(read.notices);
     notices.extend(

@@ -38,12 +38,12 @@ pub(super) fn groups(readings: &Readings, domains: &Domains, stations: &[u32]) -
             stations: Vec::with_capacity(size),
         });
     }
-    for i in 0..readings.len() {
+    for (i, &station) in stations.iter().enumerate() {
         if let Some(c) = cell(i) {
             let group = &mut groups[place[c]];
             group.axes.push(readings.attitude[i].axis());
             group.weights.push(readings.weight[i]);
-            group.stations.push(stations[i]);
+            group.stations.push(station);
         }
     }
     groups

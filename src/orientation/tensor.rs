@@ -131,7 +131,8 @@ mod tests {
     // Closed form: the eigenvalues of a few axes follow from the definition.
     #[test]
     fn closed_form_tensors() {
-        let cases: [(&[(f64, f64)], [f64; 3]); 4] = [
+        type Case<'a> = (&'a [(f64, f64)], [f64; 3]);
+        let cases: [Case; 4] = [
             (&[(123.0, 45.0)], [1.0, 0.0, 0.0]),
             (&[(0.0, 0.0), (60.0, 0.0)], [0.75, 0.25, 0.0]),
             (&[(10.0, 0.0), (100.0, 0.0)], [0.5, 0.5, 0.0]),
