@@ -145,6 +145,7 @@ pub struct ColumnsSection {
     pub polarity: Option<String>,
     pub weight: Option<String>,
     pub declination: Option<String>,
+    pub exposure: Option<String>,
 }
 
 /// A column, or one value for every row.
@@ -234,6 +235,8 @@ impl Default for DomainsSection {
 pub struct FabricSection {
     /// Confidence of intervals and ellipses.
     pub confidence: f64,
+    /// How cones are found: `ellipse`, `pivotal` or `percentile`.
+    pub uncertainty: String,
     /// Bootstrap resamples.
     pub resamples: u32,
     /// Structures whose lines carry a sense.
@@ -254,6 +257,7 @@ impl Default for FabricSection {
     fn default() -> Self {
         Self {
             confidence: 0.95,
+            uncertainty: "ellipse".into(),
             resamples: 1000,
             directed: Vec::new(),
             sets: NumberOrText::Text("auto".into()),

@@ -24,6 +24,7 @@ const KEYS: [(&str, &[&str]); 10] = [
             "polarity",
             "weight",
             "declination",
+            "exposure",
         ],
     ),
     (
@@ -41,7 +42,10 @@ const KEYS: [(&str, &[&str]); 10] = [
             "nearest_m",
         ],
     ),
-    ("fabric", &["confidence", "resamples", "directed", "sets", "terzaghi", "scanline", "plane", "max_weight"]),
+    (
+        "fabric",
+        &["confidence", "uncertainty", "resamples", "directed", "sets", "terzaghi", "scanline", "plane", "max_weight"],
+    ),
     ("compare", &["permutations", "level"]),
     ("symbols", &["scale", "spacing_mm"]),
     ("output", &["folder", "formats"]),

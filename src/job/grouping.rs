@@ -12,6 +12,8 @@ pub(super) struct Group {
     pub domain: usize,
     /// Index into [`Readings::structures`].
     pub structure: usize,
+    /// Positions in [`Readings`].
+    pub readings: Vec<u32>,
     /// One axis per reading.
     pub axes: Vec<Axis>,
     /// Its weight.
@@ -33,6 +35,7 @@ pub(super) fn groups(readings: &Readings, domains: &Domains, stations: &[u32]) -
         groups.push(Group {
             domain: c / structures,
             structure: c % structures,
+            readings: Vec::with_capacity(size),
             axes: Vec::with_capacity(size),
             weights: Vec::with_capacity(size),
             stations: Vec::with_capacity(size),
@@ -41,6 +44,7 @@ pub(super) fn groups(readings: &Readings, domains: &Domains, stations: &[u32]) -
     for (i, &station) in stations.iter().enumerate() {
         if let Some(c) = cell(i) {
             let group = &mut groups[place[c]];
+            group.readings.push(i as u32);
             group.axes.push(readings.attitude[i].axis());
             group.weights.push(readings.weight[i]);
             group.stations.push(station);

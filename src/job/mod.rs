@@ -4,6 +4,8 @@ mod area_error;
 mod area_file;
 mod area_keys;
 mod error;
+mod exposure;
+mod fabric_plan;
 mod gather;
 mod grouping;
 mod outputs;
@@ -11,6 +13,8 @@ mod paths;
 mod plan;
 mod provenance;
 mod run;
+mod seeds;
+mod statistics;
 mod summary;
 
 pub use area_error::AreaFileError;

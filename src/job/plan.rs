@@ -1,6 +1,7 @@
 //! The plan: an area file checked against what the job needs, with every path resolved.
 
 use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, OneOrMany, StationsSection, StructureName};
+use super::fabric_plan::FabricPlan;
 use super::paths::Located;
 use super::{AreaFileError, JobError};
 use crate::domain::SameName;
@@ -51,7 +52,7 @@ pub struct Plan {
     pub(super) sources: Vec<(Located, StationSpec)>,
     pub(super) domains: DomainPlan,
     pub(super) outline: Option<Located>,
-    pub(super) confidence: f64,
+    pub(super) fabric: FabricPlan,
     pub(super) folder: PathBuf,
     /// The options as used, for the record.
     pub(super) options: AreaFile,
@@ -106,7 +107,7 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
         sources,
         domains,
         outline: options.domains.outline.as_deref().map(|o| Located::new(o, &base)),
-        confidence: options.fabric.confidence,
+        fabric: FabricPlan::new(&label, &options)?,
         folder,
         options,
         text,
@@ -158,12 +159,6 @@ impl Checker<'_> {
     fn not_yet(&self, options: &AreaFile) -> Result<(), JobError> {
         let cannot =
             |key: &str, value: &str| Err(self.value(key, format!("\"{value}\""), "this version cannot do that yet"));
-        if options.fabric.terzaghi != "none" {
-            return cannot("fabric.terzaghi", &options.fabric.terzaghi);
-        }
-        if let Some(structure) = options.fabric.directed.first() {
-            return cannot("fabric.directed", structure);
-        }
         match options.domains.method.as_deref() {
             Some(method @ ("clusters" | "fault-blocks")) => cannot("domains.method", method),
             _ => Ok(()),
@@ -204,6 +199,7 @@ impl Checker<'_> {
             let spec = StationSpec {
                 structures: structures.clone(),
                 kinds: kinds.clone(),
+                directed: options.fabric.directed.iter().cloned().collect(),
                 ..self.spec(section, &source.named)?
             };
             sources.push((source, spec));

@@ -2,20 +2,16 @@
 
 use super::error::JobError;
 use super::gather::{Gathered, gather};
-use super::grouping::{groups, stations};
 use super::outputs::Staging;
 use super::plan::{DomainPlan, Plan};
+use super::statistics::describe;
 use super::summary::{AllCounts, RunRecord, Summary};
 use super::{message_of, provenance};
-use crate::fabric::{self, FabricOptions, Sample};
 use crate::format::gpkg::{self, GeometryKind, LayerToWrite, Metadata, Package, Style};
 use crate::layer::{self, PlacedFabric, Results};
 use crate::notice::{Notice, Progress, Refusal};
-use crate::orientation::TrueAzimuth;
 use crate::style::{self, Turning};
 use crate::table::{Column, Table};
-use geo::{Coord, InteriorPoint};
-use rayon::prelude::*;
 use std::path::PathBuf;
 
 /// What a run did.
@@ -57,14 +53,18 @@ pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
     targets.extend(style_names.iter().map(String::as_str));
     let mut staging = Staging::prepare(&plan.folder, &targets, &inputs(plan))?;
 
-    let mut gathered = gather(plan, progress)?;
-    let fabrics = summarise(plan, &mut gathered, progress);
-    let Gathered { map, readings, tables, domains, refusals, notices, counts } = gathered;
+    let Gathered { map, readings, tables, domains, refusals, mut notices, counts } = gather(plan, progress)?;
+    let statistics = describe(plan, &readings, &tables, &domains, &map, progress);
+    notices.extend(statistics.notices);
+    let fabrics = statistics.fabrics;
     let results = Results {
         readings: &readings,
         sources: &tables,
         domains: &domains,
         fabrics: &fabrics,
+        folds: &statistics.folds,
+        sets: &statistics.sets,
+        set_of: &statistics.set_of,
         refusals: &refusals,
         crs: map.code_or_wkt(),
         geographic: !map.is_projected(),
@@ -108,45 +108,6 @@ fn sources(plan: &Plan) -> Vec<(&super::paths::Located, &'static str)> {
     }
     sources.extend(plan.outline.iter().map(|outline| (outline, "outline")));
     sources
-}
-
-fn summarise(plan: &Plan, gathered: &mut Gathered, progress: &dyn Progress) -> Vec<PlacedFabric> {
-    let (readings, domains, map) = (&gathered.readings, &gathered.domains, &gathered.map);
-    let (stations, notice) = stations(readings);
-    gathered.notices.extend(notice);
-    let groups = groups(readings, domains, &stations);
-    progress.begin("summarising fabrics", Some(groups.len() as u64));
-    let mut inside: Vec<Option<Coord<f64>>> =
-        domains.list.iter().map(|d| d.shape.interior_point().map(Coord::from)).collect();
-    if inside.len() == 1 && inside[0].is_none() {
-        // Stations on a line or at a point span no area; the fabric then stands at the first of them.
-        inside[0] = readings.position.iter().copied().min_by(|a, b| a.x.total_cmp(&b.x).then(a.y.total_cmp(&b.y)));
-    }
-    let fabrics = groups
-        .into_par_iter()
-        .map(|group| {
-            let structure = readings.structures[group.structure].clone();
-            let sample = Sample::new(&group.axes, structure.kind)
-                .weighted(&group.weights)
-                .and_then(|s| s.at_stations(&group.stations))
-                .expect("weights were checked when they were read, and the columns are of one length");
-            let options = FabricOptions { confidence: plan.confidence, folded: is_folded(&structure.name) };
-            let at = inside[group.domain].unwrap_or(Coord { x: f64::NAN, y: f64::NAN });
-            let fabric = fabric::summarise(&sample, &options);
-            let mut placed = PlacedFabric { domain: group.domain, structure, fabric, at, grid_azimuth: None };
-            let azimuth = layer::symbol_azimuth(&placed).and_then(|a| TrueAzimuth::new(a).ok());
-            placed.grid_azimuth = azimuth.and_then(|a| map.grid_azimuth(at, a));
-            progress.advance(1);
-            placed
-        })
-        .collect();
-    progress.end();
-    fabrics
-}
-
-/// Structures whose poles spread along a girdle by folding; two maxima of joints are two sets instead.
-fn is_folded(structure: &str) -> bool {
-    !matches!(structure, "joint" | "fault" | "vein" | "dike")
 }
 
 fn record(plan: &Plan, crs: &str, counts: &AllCounts, notices: &[Notice]) -> Result<RunRecord, JobError> {

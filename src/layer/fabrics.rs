@@ -1,11 +1,13 @@
 //! Layer `fabrics`: the fabric of one structure in one domain.
 
-use super::{PlacedFabric, Results};
-use crate::fabric::{self, Fabric};
-use crate::orientation::{Plane, Rotation};
+use super::placed::{PlacedFabric, inclination_of, symbol_azimuth, turns};
+use super::words::{described, titled};
+use super::{Results, rows};
+use crate::fabric::Fabric;
+use crate::orientation::{Plane, Polarity};
 use crate::station::Kind;
 use crate::symbol;
-use crate::table::{Column, Shapes, Table, TextColumn};
+use crate::table::{Column, IntegerColumn, Table};
 
 type Get = fn(&PlacedFabric) -> Option<f64>;
 
@@ -16,8 +18,8 @@ const NUMBERS: [(&str, Get); 37] = [
     ("mean_strike", |p| mean_plane(p)?.strike.map(|s| s.degrees())),
     ("mean_dip", |p| Some(mean_plane(p)?.dip.degrees())),
     ("mean_dip_direction", |p| mean_plane(p)?.dip_direction().map(|d| d.degrees())),
-    ("mean_trend", |p| Some(p.fabric.mean?.trend())),
-    ("mean_plunge", |p| Some(p.fabric.mean?.plunge())),
+    ("mean_trend", |p| Some(mean_line(p)?.0)),
+    ("mean_plunge", |p| Some(mean_line(p)?.1)),
     ("s1", |p| value(&p.fabric, 0)),
     ("s2", |p| value(&p.fabric, 1)),
     ("s3", |p| value(&p.fabric, 2)),
@@ -35,8 +37,8 @@ const NUMBERS: [(&str, Get); 37] = [
     ("resultant", |p| p.fabric.resultant),
     ("fisher_kappa", |p| p.fabric.fisher_kappa),
     ("fisher_alpha95", |p| p.fabric.fisher_alpha95),
-    ("kent_kappa", |_| None),
-    ("kent_beta", |_| None),
+    ("kent_kappa", |p| Some(p.directed.as_ref()?.kent?.kappa)),
+    ("kent_beta", |p| Some(p.directed.as_ref()?.kent?.beta)),
     ("watson_kappa", |p| p.fabric.watson_kappa),
     ("bingham_k2", |p| Some(p.fabric.bingham?.k2)),
     ("bingham_k3", |p| Some(p.fabric.bingham?.k3)),
@@ -46,8 +48,8 @@ const NUMBERS: [(&str, Get); 37] = [
     ("axis_cone_minor", |p| Some(p.fabric.third_cone?.minor)),
     ("uniformity_p", |p| p.fabric.uniformity_p),
     ("rotation_true", symbol_azimuth),
-    ("rotation_grid", |p| Some(Rotation::along(p.grid_azimuth?).clockwise())),
-    ("rotation_ccw", |p| Some(Rotation::along(p.grid_azimuth?).counter_clockwise())),
+    ("rotation_grid", |p| Some(turns(p.grid_azimuth)?.0)),
+    ("rotation_ccw", |p| Some(turns(p.grid_azimuth)?.1)),
 ];
 
 fn value(fabric: &Fabric, which: usize) -> Option<f64> {
@@ -58,120 +60,44 @@ fn mean_plane(placed: &PlacedFabric) -> Option<Plane> {
     if placed.structure.kind == Kind::Planar { placed.fabric.mean.map(Plane::from_pole) } else { None }
 }
 
-/// Strike of the mean plane or trend of the mean line.
-pub fn symbol_azimuth(placed: &PlacedFabric) -> Option<f64> {
-    match placed.structure.kind {
-        Kind::Planar => mean_plane(placed)?.strike.map(|s| s.degrees()),
-        Kind::Linear => Some(placed.fabric.mean?.trend()),
-    }
+/// Trend and plunge of the mean: with its sense, upward plunges negative, where the structure is directed.
+fn mean_line(p: &PlacedFabric) -> Option<(f64, f64)> {
+    let mean = p.fabric.mean?;
+    let directed = p.directed.as_ref().and_then(|d| d.mean);
+    Some(directed.map_or((mean.trend(), mean.plunge()), |d| (d.trend(), d.plunge())))
 }
 
 /// Dip of the mean plane or plunge of the mean line.
-fn symbol_inclination(placed: &PlacedFabric) -> Option<f64> {
-    match placed.structure.kind {
-        Kind::Planar => Some(mean_plane(placed)?.dip.degrees()),
-        Kind::Linear => Some(placed.fabric.mean?.plunge()),
-    }
+fn symbol_inclination(p: &PlacedFabric) -> Option<f64> {
+    p.fabric.mean.map(|mean| inclination_of(mean, p.structure.kind))
 }
 
 pub(super) fn table(results: &Results) -> Table {
     let fabrics = results.fabrics;
     let words = |get: &dyn Fn(&PlacedFabric) -> Option<&'static str>| fabrics.iter().map(get).collect::<Column>();
-    let domain = |p: &PlacedFabric| &results.domains.list[p.domain];
-    let count = |n: usize| i64::try_from(n).ok();
-    let (mut note, mut label) = (TextColumn::default(), TextColumn::default());
-    for placed in fabrics {
-        note.push(Some(placed.fabric.note.as_str()).filter(|n| !n.is_empty()));
-        let text = symbol_inclination(placed).and_then(|i| symbol::label(placed.structure.kind, i));
-        label.push(text.as_deref());
-    }
-    let mut table = Table::new("fabrics")
-        .with(
-            "domain_id",
-            "Domain number",
-            "Number of the domain, from 1",
-            fabrics.iter().map(|p| Some(i64::from(domain(p).id.number()))).collect(),
-        )
-        .with("domain", "Domain", "Name of the domain", fabrics.iter().map(|p| Some(domain(p).name.as_str())).collect())
-        .with(
-            "structure",
-            "Structure",
-            "What was measured: bedding, joint, lineation …",
-            fabrics.iter().map(|p| Some(p.structure.name.as_str())).collect(),
-        )
-        .with("kind", "Kind", "planar (statistics work on poles) or linear", words(&|p| Some(p.structure.kind.word())))
-        .with("n", "Readings", &described("n"), fabrics.iter().map(|p| count(p.fabric.n)).collect())
-        .with(
-            "n_stations",
-            "Stations",
-            &described("n_stations"),
-            fabrics.iter().map(|p| count(p.fabric.n_stations)).collect(),
-        )
-        .with(
-            "n_clipped",
-            "Clipped weights",
-            "Readings whose weight was cut to the cap; 0 where no exposure weights were asked for",
-            fabrics.iter().map(|_| Some(0_i64)).collect(),
-        )
-        .with("directed", "Directed", "True where the lines carry a sense", {
-            let mut column = crate::table::IntegerColumn::default();
-            fabrics.iter().for_each(|_| column.push(Some(0)));
-            Column::Boolean(column)
-        });
+    let counts =
+        |get: &dyn Fn(&PlacedFabric) -> usize| fabrics.iter().map(|p| i64::try_from(get(p)).ok()).collect::<Column>();
+    let mut directed = IntegerColumn::default();
+    fabrics.iter().for_each(|p| directed.push(Some(p.directed.is_some().into())));
+    let notes = fabrics.iter().map(|p| Some(p.fabric.note.clone()).filter(|n| !n.is_empty()));
+    let labels = fabrics.iter().map(|p| symbol_inclination(p).and_then(|i| symbol::label(p.structure.kind, i)));
+    let mut table = rows::head("fabrics", results, fabrics.iter().map(|p| (p.domain, &p.structure)))
+        .with("kind", &titled("kind"), &described("kind"), words(&|p| Some(p.structure.kind.word())))
+        .with("n", &titled("n"), &described("n"), counts(&|p| p.fabric.n))
+        .with("n_stations", &titled("n_stations"), &described("n_stations"), counts(&|p| p.fabric.n_stations))
+        .with("n_clipped", &titled("n_clipped"), &described("n_clipped"), counts(&|p| p.clipped))
+        .with("directed", &titled("directed"), &described("directed"), Column::Boolean(directed));
     for (name, get) in NUMBERS {
         table = table.with(name, &titled(name), &described(name), fabrics.iter().map(get).collect());
     }
-    let symbols = fabrics.iter().map(|p| {
+    let code = |p: &PlacedFabric| {
         let inclination = symbol_inclination(p)?;
-        Some(
-            symbol::choose(&p.structure.name, p.structure.kind, inclination, crate::orientation::Polarity::Unknown)
-                .code,
-        )
-    });
-    let symbols: Column = symbols.collect();
+        Some(symbol::choose(&p.structure.name, p.structure.kind, inclination, Polarity::Unknown).code)
+    };
     table = table
-        .with("shape", "Shape", &described("shape"), words(&|p| Some(p.fabric.shape.word())))
-        .with("note", "Note", &described("note"), Column::Text(note))
-        .with("symbol", "Symbol", "Code of the map symbol of the mean; null where there is none", symbols)
-        .with("label", "Label", "Dip or plunge of the mean, to print beside the symbol", Column::Text(label));
-    table.shapes = Shapes::Points(fabrics.iter().map(|p| p.at).collect());
-    table.crs = Some(results.crs.to_owned());
-    table
-}
-
-/// Names that are not statistics of [`fabric::ALL`]: heading, meaning.
-const OTHERS: [(&str, &str, &str); 8] = [
-    (
-        "rotation_true",
-        "Rotation, true north",
-        "Strike or trend of the mean; clockwise turn on a map whose top is true north, degrees",
-    ),
-    (
-        "rotation_grid",
-        "Rotation, grid north",
-        "Clockwise turn of a north-up symbol of the mean on a map in this layer's CRS, degrees",
-    ),
-    ("rotation_ccw", "Rotation, counter-clockwise", "The same turn counted counter-clockwise, degrees"),
-    ("kent_kappa", "Kent kappa", "Concentration of the Kent distribution, directed readings only"),
-    ("kent_beta", "Kent beta", "Ovalness of the Kent distribution, directed readings only"),
-    (
-        "watson_kappa",
-        "Watson kappa",
-        "Concentration of the Watson distribution: positive about e1, negative about e3's girdle",
-    ),
-    ("bingham_k2", "Bingham k2", "Bingham concentration of e2, with k1 = 0 for e1"),
-    ("bingham_k3", "Bingham k3", "Bingham concentration of e3, with k1 = 0 for e1"),
-];
-
-fn titled(name: &str) -> String {
-    let registered = fabric::ALL.iter().find(|s| s.name == name).map(|s| s.title);
-    registered.or_else(|| OTHERS.iter().find(|o| o.0 == name).map(|o| o.1)).unwrap_or(name).to_owned()
-}
-
-fn described(name: &str) -> String {
-    if let Some(s) = fabric::ALL.iter().find(|s| s.name == name) {
-        let unit = if s.unit.is_empty() { String::new() } else { format!(" Unit: {}.", s.unit) };
-        return format!("{}{unit} Needs {} readings. Source: {}.", s.description, s.least_n, s.source);
-    }
-    OTHERS.iter().find(|o| o.0 == name).map_or_else(String::new, |o| o.2.to_owned())
+        .with("shape", &titled("shape"), &described("shape"), words(&|p| Some(p.fabric.shape.word())))
+        .with("note", &titled("note"), &described("note"), rows::texts(notes))
+        .with("symbol", &titled("symbol"), &described("symbol"), words(&code))
+        .with("label", &titled("label"), &described("label"), rows::texts(labels));
+    rows::placed(table, results, fabrics.iter().map(|p| p.at))
 }

@@ -3,33 +3,20 @@
 mod carried;
 mod domains;
 mod fabrics;
+mod fold_axes;
 mod orientations;
+mod placed;
 mod refusals;
+mod rows;
+mod sets;
+mod words;
 
-pub use fabrics::symbol_azimuth;
+pub use placed::{PlacedFabric, PlacedFold, PlacedSet, azimuth_of, symbol_azimuth};
 
 use crate::domain::Domains;
-use crate::fabric::Fabric;
 use crate::notice::Refusal;
-use crate::orientation::GridAzimuth;
-use crate::station::{Readings, Structure};
+use crate::station::Readings;
 use crate::table::Table;
-use geo_types::Coord;
-
-/// The fabric of one structure in one domain, placed on the map.
-#[derive(Debug, Clone)]
-pub struct PlacedFabric {
-    /// Position in [`Domains::list`].
-    pub domain: usize,
-    /// The structure.
-    pub structure: Structure,
-    /// The statistics.
-    pub fabric: Fabric,
-    /// A point inside the domain.
-    pub at: Coord<f64>,
-    /// Mean strike or trend from the map's grid north at that point, where there is a mean.
-    pub grid_azimuth: Option<GridAzimuth>,
-}
 
 /// Everything that the layers are made from.
 pub struct Results<'a> {
@@ -41,6 +28,12 @@ pub struct Results<'a> {
     pub domains: &'a Domains,
     /// One per domain and structure, sorted by both.
     pub fabrics: &'a [PlacedFabric],
+    /// One per girdle of poles, in the same order.
+    pub folds: &'a [PlacedFold],
+    /// Orientation sets, in the same order, then by number.
+    pub sets: &'a [PlacedSet],
+    /// For each reading the number of its set.
+    pub set_of: &'a [Option<u32>],
     /// The rows that were not used.
     pub refusals: &'a [Refusal],
     /// CRS of the map.
@@ -77,7 +70,7 @@ pub struct Layer {
 }
 
 /// Every output layer, in the order they are written.
-pub const ALL: [Layer; 4] = [
+pub const ALL: [Layer; 6] = [
     Layer {
         name: "orientations",
         title: "Orientations",
@@ -98,6 +91,20 @@ pub const ALL: [Layer; 4] = [
         description: "The fabric of one structure in one domain: mean attitude, eigenvalues, uncertainty",
         geometry: Geometry::Point,
         table: fabrics::table,
+    },
+    Layer {
+        name: "fold_axes",
+        title: "Fold axes",
+        description: "The axis of one structure whose poles lie along a girdle in one domain",
+        geometry: Geometry::Point,
+        table: fold_axes::table,
+    },
+    Layer {
+        name: "sets",
+        title: "Orientation sets",
+        description: "One orientation set of one structure in one domain",
+        geometry: Geometry::Point,
+        table: sets::table,
     },
     Layer {
         name: "refusals",

@@ -62,7 +62,7 @@ pub(super) fn table(results: &Results) -> Table {
         .with("domain", "Domain", "Name of the structural domain; null outside all", Column::Word(domain_name))
         .with("deviation", "Deviation", "Acute angle to the mean axis of the same structure in the same domain; degrees, [0, 90]; null where there is no mean", deviation)
         .with("outlier", "Outlier", "True where the reading belongs to its domain's fabric less than to none; null where not judged", Column::Boolean((0..n).fold(IntegerColumn::default(), |mut c, _| { c.push(None); c })))
-        .with("set_id", "Set", "Number of the orientation set within the domain; null where no sets were sought", (0..n).map(|_| None::<i64>).collect());
+        .with("set_id", "Set", "Number of the orientation set within the domain; null where no sets were sought", results.set_of.iter().map(|s| s.map(i64::from)).collect());
     let carried = carried::fields(results, &table);
     table.fields.extend(carried);
     table.shapes = Shapes::Points(readings.position.clone());
