@@ -198,11 +198,13 @@ fn cones_are_not_seen_in_cylinders_nor_sought_in_clusters() {
         });
         assert_between(&format!("cone seen in a cylinder of 160 degrees, n {n}"), seen, 0.03, 0.09);
     }
-    let tested = share(4_000, 8, |rng| {
-        let axes: Vec<Axis> = (0..30).map(|_| axis(fisher(rng, 20.0))).collect();
-        fold_axis(&Sample::new(&axes, Kind::Planar), 0.95).unwrap().cone_test.is_some()
-    });
-    assert_between("cone sought in a cluster", tested, 0.0, 0.001);
+    for kappa in [4.0, 20.0, 100.0] {
+        let tested = share(2_000, 8, |rng| {
+            let axes: Vec<Axis> = (0..30).map(|_| axis(fisher(rng, kappa))).collect();
+            fold_axis(&Sample::new(&axes, Kind::Planar), 0.95).unwrap().cone_half_angle().is_some()
+        });
+        assert_between(&format!("cone claimed for a cluster of kappa {kappa}"), tested, 0.0, 0.02);
+    }
     let found = share(1_000, 9, |rng| {
         let axes: Vec<Axis> = cylinder(rng, 30, 150.0)
             .into_iter()

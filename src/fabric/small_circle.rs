@@ -144,6 +144,31 @@ fn middle_of_arc(data: &[(Vector3<f64>, f64)], frame: &[Vector3<f64>; 3]) -> Vec
     frame[0] * middle.cos() + frame[1] * middle.sin()
 }
 
+/// The shortest arc about the circle's centre, degrees in [0, 360], that holds `share` of the fitted ends.
+pub fn coverage(sample: &Sample, circle: &SmallCircle, share: f64) -> f64 {
+    let centre = circle.axis.vector();
+    let helper = if centre.z.abs() < 0.9 { Vector3::z() } else { Vector3::x() };
+    let u = centre.cross(&helper).normalize();
+    let v = centre.cross(&u);
+    let mut places: Vec<f64> = sample
+        .axes()
+        .iter()
+        .map(|a| {
+            let e = end(&a.vector(), &circle.side);
+            e.dot(&v).atan2(e.dot(&u)).to_degrees().rem_euclid(360.0)
+        })
+        .collect();
+    places.sort_unstable_by(f64::total_cmp);
+    let n = places.len();
+    let held = ((share * n as f64).ceil() as usize).clamp(1, n.max(1));
+    (0..n)
+        .map(|i| {
+            let last = i + held - 1;
+            places[last % n] + if last >= n { 360.0 } else { 0.0 } - places[i]
+        })
+        .fold(360.0, f64::min)
+}
+
 /// Least squares in angles (Mardia & Gadsden 1977, from memory), from the plane fit by Gauss-Newton steps.
 pub fn angular_fit(sample: &Sample, start: &SmallCircle) -> SmallCircle {
     let data = ordered(sample);
