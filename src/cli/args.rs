@@ -30,6 +30,18 @@ pub enum Command {
     Check(RunArgs),
     /// Print the symbol catalogue: code, what it marks, when it is chosen
     Symbols(CommonArgs),
+    /// Say what a statistic is: its unit, fewest readings and published source; without a name, list them all
+    Explain(ExplainArgs),
+}
+
+/// What to explain.
+#[derive(Debug, Args)]
+pub struct ExplainArgs {
+    /// Field name, for example fisher_alpha95
+    pub name: Option<String>,
+    /// Options of every command.
+    #[command(flatten)]
+    pub common: CommonArgs,
 }
 
 /// What to work on.

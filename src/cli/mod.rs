@@ -2,6 +2,7 @@
 
 mod args;
 mod check;
+mod explain;
 mod messages;
 mod progress;
 mod run;
@@ -27,6 +28,7 @@ pub fn main() -> ExitCode {
     let options = match &cli.command {
         Command::Run(a) | Command::Check(a) => &a.common,
         Command::Symbols(common) => common,
+        Command::Explain(a) => &a.common,
     };
     let printer = Printer::new(options);
     if let Err(message) = set_threads(options) {
@@ -37,6 +39,7 @@ pub fn main() -> ExitCode {
         Command::Run(args) => run::run(args, &printer),
         Command::Check(args) => check::check(args, &printer),
         Command::Symbols(common) => symbols::symbols(common),
+        Command::Explain(args) => explain::explain(args),
     })
 }
 

@@ -6,7 +6,7 @@ use super::progress::progress;
 use super::{DONE, FINDINGS, STOPPED};
 use crate::fabric::Shape;
 use crate::job::{self, FabricLine, Outcome, Overrides};
-use crate::orientation::Plane;
+use crate::orientation::{Axis, Plane};
 use crate::station::Kind;
 use std::path::Path;
 
@@ -79,34 +79,42 @@ fn is_style(path: &Path) -> bool {
 fn fabric_line(line: &FabricLine) -> String {
     let fabric = &line.placed.fabric;
     let mut parts = vec![format!("n {}", fabric.n), fabric.shape.word().replace('_', " ")];
-    match (fabric.mean, line.placed.structure.kind) {
-        (Some(axis), Kind::Planar) => {
-            let plane = Plane::from_pole(axis);
-            let strike = plane.strike.map_or(0.0, |s| s.degrees().round() % 360.0);
-            parts.push(format!("mean plane {strike:03.0}/{:02.0} (right-hand strike/dip)", plane.dip.degrees()));
-        }
-        (Some(axis), Kind::Linear) => {
-            parts.push(format!(
-                "mean line {:03.0}/{:02.0} (trend/plunge)",
-                axis.trend().round() % 360.0,
-                axis.plunge()
-            ));
-        }
-        (None, _) => {}
+    if let Some(axis) = fabric.mean {
+        parts.push(match line.placed.structure.kind {
+            Kind::Planar => format!("mean plane {} (right-hand strike/dip)", attitude(axis, Kind::Planar)),
+            Kind::Linear => format!("mean line {} (trend/plunge)", attitude(axis, Kind::Linear)),
+        });
     }
     if let (Some(_), Some(cone)) = (fabric.mean, fabric.mean_cone) {
         parts.push(format!("cone of the mean {:.1}° × {:.1}°", cone.major, cone.minor));
     }
     if let (Shape::Girdle, Kind::Planar, Some(eigen)) = (fabric.shape, line.placed.structure.kind, fabric.eigen) {
         let axis = eigen.axes[2];
-        parts.push(format!("fold axis {:03.0}/{:02.0} (trend/plunge)", axis.trend().round() % 360.0, axis.plunge()));
+        parts.push(format!("fold axis {} (trend/plunge)", attitude(axis, Kind::Linear)));
         if let Some(cone) = fabric.third_cone {
             parts.push(format!("cone of the axis {:.1}° × {:.1}°", cone.major, cone.minor));
         }
+    }
+    if !line.sets.is_empty() {
+        let kind = line.placed.structure.kind;
+        let means: Vec<String> = line.sets.iter().map(|set| attitude(set.set.eigen.axes[0], kind)).collect();
+        parts.push(format!("{} sets: {}", means.len(), means.join(", ")));
     }
     if let Some(eigen) = fabric.eigen {
         let [s1, s2, s3] = eigen.values;
         parts.push(format!("S {s1:.3} {s2:.3} {s3:.3}"));
     }
     format!("{} · {}: {}", line.domain, line.placed.structure.name, parts.join(", "))
+}
+
+/// "043/31": right-hand strike and dip of a pole's plane, or trend and plunge, to the degree.
+fn attitude(axis: Axis, kind: Kind) -> String {
+    let (azimuth, inclination) = match kind {
+        Kind::Planar => {
+            let plane = Plane::from_pole(axis);
+            (plane.strike.map_or(0.0, |s| s.degrees()), plane.dip.degrees())
+        }
+        Kind::Linear => (axis.trend(), axis.plunge()),
+    };
+    format!("{:03.0}/{:02.0}", azimuth.round() % 360.0, inclination)
 }

@@ -8,7 +8,7 @@ use super::statistics::describe;
 use super::summary::{AllCounts, RunRecord, Summary};
 use super::{message_of, provenance};
 use crate::format::gpkg::{self, GeometryKind, LayerToWrite, Metadata, Package, Style};
-use crate::layer::{self, PlacedFabric, Results};
+use crate::layer::{self, PlacedFabric, PlacedSet, Results};
 use crate::notice::{Notice, Progress, Refusal};
 use crate::style::{self, Turning};
 use crate::table::{Column, Table};
@@ -34,6 +34,8 @@ pub struct FabricLine {
     pub domain: String,
     /// The statistics, with their structure.
     pub placed: PlacedFabric,
+    /// Its orientation sets, where there are several.
+    pub sets: Vec<PlacedSet>,
 }
 
 /// Time stamp of the GeoPackage's contents: fixed, so that the same input writes the same bytes.
@@ -92,7 +94,11 @@ pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
         staging.write(name, |file| file.write_all(text.as_bytes()))?;
     }
     let written = staging.commit()?;
-    let line = |placed: PlacedFabric| FabricLine { domain: domains.list[placed.domain].name.clone(), placed };
+    let line = |placed: PlacedFabric| {
+        let own = |s: &&PlacedSet| s.domain == placed.domain && s.structure == placed.structure;
+        let sets = statistics.sets.iter().filter(own).cloned().collect();
+        FabricLine { domain: domains.list[placed.domain].name.clone(), placed, sets }
+    };
     Ok(Outcome { counts, notices, refusals, fabrics: fabrics.into_iter().map(line).collect(), written })
 }
 

@@ -1,7 +1,7 @@
 //! Layer `orientations`: one accepted reading.
 
 use super::{Results, carried};
-use crate::orientation::{Attitude, Rotation};
+use crate::orientation::{Attitude, Polarity, Rotation};
 use crate::symbol;
 use crate::table::{Column, IntegerColumn, Shapes, Table, TextColumn, WordColumn};
 
@@ -43,6 +43,12 @@ pub(super) fn table(results: &Results) -> Table {
         .with("structure", "Structure", "What was measured: bedding, joint, lineation …", Column::Word(structures))
         .with("kind", "Kind", "planar (strike and dip) or linear (trend and plunge)", words(&|i| Some(structure(i).kind.word())))
         .with("polarity", "Polarity", "upright, overturned or unknown; null for lines", words(&|i| plane(i).map(|_| readings.polarity[i].word())))
+        .with(
+            "sense",
+            "Sense",
+            "down or up: which way a directed line points; azimuth, trend and plunge are those of its lower end; null for planes and lines without sense",
+            words(&|i| line(i).and_then(|_| sense(readings.polarity[i]))),
+        )
         .with("azimuth", "Azimuth", "Strike (right-hand rule) or trend; degrees clockwise from true north, [0, 360); null for a horizontal plane given without one", real(&|i| readings.attitude[i].azimuth().map(|a| a.degrees())))
         .with("inclination", "Inclination", "Dip or plunge; degrees down from horizontal, [0, 90]", real(&|i| Some(readings.attitude[i].inclination().degrees())))
         .with("strike", "Strike", "Right-hand strike of a plane (it dips to the right); degrees clockwise from true north, [0, 360)", real(&|i| plane(i)?.strike.map(|s| s.degrees())))
@@ -68,6 +74,15 @@ pub(super) fn table(results: &Results) -> Table {
     table.shapes = Shapes::Points(readings.position.clone());
     table.crs = Some(results.crs.to_owned());
     table
+}
+
+/// Lines that carry a sense keep it in the polarity: turned over where they point up.
+fn sense(polarity: Polarity) -> Option<&'static str> {
+    match polarity {
+        Polarity::Upright => Some("down"),
+        Polarity::Overturned => Some("up"),
+        Polarity::Unknown => None,
+    }
 }
 
 fn deviations(results: &Results) -> Column {
