@@ -14,7 +14,9 @@ const WIDEST: f64 = 2.0;
 /// Iterations to compare starts, iterations at most of the best, and the gain per reading that ends them.
 const TRIAL: usize = 12;
 const MOST: usize = 200;
-const GAIN: f64 = 1e-7;
+const GAIN: f64 = 1e-5;
+/// Readings used at most to compare starts.
+const MOST_TRIED: usize = 500;
 /// Random starts per number of parts, besides one from the fullest caps.
 const RANDOM_STARTS: usize = 6;
 /// Readings per parallel piece; fixed, so that sums do not depend on the number of threads.
@@ -172,7 +174,8 @@ pub fn fit(data: &Data, parts: usize, seed: u64) -> Mixture {
     let mut rng = ChaCha8Rng::seed_from_u64(seed);
     rng.set_stream(parts as u64);
     let mut starts = vec![started(&crowded(data, parts))];
-    for _ in 0..RANDOM_STARTS {
+    // One part has one likely place: the fullest cap.
+    for _ in 0..if parts == 1 { 0 } else { RANDOM_STARTS } {
         let mut centres: Vec<Vector3<f64>> = Vec::with_capacity(parts);
         for _ in 0..parts {
             // The farthest of three draws from the centres so far: spread, but not at the mercy of outliers.
@@ -182,7 +185,9 @@ pub fn fit(data: &Data, parts: usize, seed: u64) -> Mixture {
         }
         starts.push(started(&centres));
     }
-    let tried: Vec<Mixture> = starts.into_par_iter().map(|s| iterate(data, s, TRIAL)).collect();
+    let stride = data.len().div_ceil(MOST_TRIED).max(1);
+    let few: Data = data.iter().step_by(stride).copied().collect();
+    let tried: Vec<Mixture> = starts.into_par_iter().map(|s| iterate(&few, s, TRIAL)).collect();
     let best = tried.into_iter().reduce(|a, b| if b.log_likelihood > a.log_likelihood { b } else { a });
     best.map_or_else(|| fit(data, 0, seed), |b| iterate(data, b, MOST))
 }

@@ -24,6 +24,9 @@ const MOST_SEARCHED: usize = 2000;
 /// Parts are one set where the density between them stays above this share of the lesser peak.
 const DIP: f64 = 0.7;
 
+/// A difference in BIC beyond doubt (Kass & Raftery 1995 call 10 very strong; from memory).
+const FAR_BEHIND: f64 = 20.0;
+
 /// How many sets.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum SetCount {
@@ -105,6 +108,7 @@ pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
         }
         SetCount::Auto => {
             let most = MOST_SETS.min((n / 10.0) as usize);
+            let single = bingham_bic(&searched, n);
             let mut best = mixture::fit(&searched, 0, seed);
             let mut worse = 0;
             for k in 1..=most {
@@ -119,8 +123,12 @@ pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
                         break;
                     }
                 }
+                // Two parts that fall this far behind one Bingham distribution are not made good by a third.
+                if k == 2 && single + FAR_BEHIND < best.bic(n) {
+                    break;
+                }
             }
-            if best.parts.len() < 2 || bingham_bic(&searched, n) <= best.bic(n) {
+            if best.parts.len() < 2 || single <= best.bic(n) {
                 return Sets::none(sample.len(), "one maximum or girdle fits as well as several sets: no sets");
             }
             let groups = joined(&best);
