@@ -15,7 +15,7 @@ pub(super) fn check(args: &RunArgs, printer: &Printer) -> u8 {
     let checked = match checked {
         Ok(checked) => checked,
         Err(error) => {
-            printer.error(&error.to_string());
+            printer.stopped(&error);
             return STOPPED;
         }
     };

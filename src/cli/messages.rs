@@ -1,7 +1,7 @@
 //! The one printer: it alone decides what quiet means, and how a message looks.
 
 use super::args::{CommonArgs, MessageFormat};
-use crate::job::{Message, message_of};
+use crate::job::{JobError, Message, message_of};
 use crate::notice::{Notice, Refusal, Severity};
 use std::io::{self, Write};
 
@@ -68,6 +68,15 @@ impl Printer {
                 ),
             );
         }
+    }
+
+    /// What stopped a job, after everything that led to it.
+    pub fn stopped(&self, error: &JobError) {
+        if let JobError::NothingLeft(checked) = error {
+            checked.notices.iter().for_each(|notice| self.notice(notice));
+            self.refusals(&checked.refusals, true);
+        }
+        self.error(&error.to_string());
     }
 
     /// What stopped the job; printed even when quiet.

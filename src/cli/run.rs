@@ -32,7 +32,7 @@ pub(super) fn run(args: &RunArgs, printer: &Printer) -> u8 {
     let outcome = match outcome {
         Ok(outcome) => outcome,
         Err(error) => {
-            printer.error(&error.to_string());
+            printer.stopped(&error);
             return STOPPED;
         }
     };

@@ -68,6 +68,12 @@ impl Locator {
         Self { boxes: RTree::bulk_load(boxes), edges: RTree::bulk_load(edges), trees }
     }
 
+    /// Distance to the nearest boundary, in map units; infinite where there are no polygons.
+    pub fn distance(&self, at: Coord<f64>) -> f64 {
+        let nearest = self.edges.nearest_neighbor_iter_with_distance_2(&Point(at)).next();
+        nearest.map_or(f64::INFINITY, |(_, squared)| squared.sqrt())
+    }
+
     /// Where `at` lies; outside all polygons, one within `nearest` (map units, 0 for none) is taken.
     pub fn locate(&self, at: Coord<f64>, nearest: f64) -> Located {
         let here = AABB::from_point(Point(at));

@@ -81,9 +81,9 @@ pub struct Domains {
     pub of: Vec<Option<DomainId>>,
 }
 
-/// One domain that holds every reading; its shape is `outline`, or the hull of the stations.
-pub fn single(name: &str, readings: &Readings, outline: Option<MultiPolygon<f64>>) -> Domains {
-    let shape = outline.unwrap_or_else(|| hull_of(&readings.position));
+/// One domain that holds every reading; its shape is the hull of the stations.
+pub fn single(name: &str, readings: &Readings) -> Domains {
+    let shape = hull_of(&readings.position);
     let id = DomainId::of_index(0);
     Domains {
         method: Method::Single,
@@ -92,14 +92,28 @@ pub fn single(name: &str, readings: &Readings, outline: Option<MultiPolygon<f64>
     }
 }
 
+/// How far a station outside every polygon may be from the one it joins.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct Reach {
+    /// As the user said it.
+    pub metres: f64,
+    /// On the map.
+    pub map_units: f64,
+}
+
 /// Domains from polygons on the map, cleaned by [`clean`].
 ///
 /// A station strictly inside a polygon belongs to it, to the lowest id where polygons overlap. A station on
 /// boundaries alone belongs to the lowest id among the polygons that it touches. A station outside every
-/// polygon joins the nearest within `nearest` map units (the lowest id where two are equally near), else none.
-pub fn by_polygons(polygons: Vec<NamedPolygon>, readings: &Readings, nearest: f64) -> (Domains, Vec<Notice>) {
+/// polygon joins the nearest within `nearest` (the lowest id where two are equally near), else none.
+pub fn by_polygons(
+    method: Method,
+    polygons: Vec<NamedPolygon>,
+    readings: &Readings,
+    nearest: Reach,
+) -> (Domains, Vec<Notice>) {
     let locator = Locator::new(polygons.iter().map(|p| &p.shape));
-    let located: Vec<Located> = readings.position.par_iter().map(|&at| locator.locate(at, nearest)).collect();
+    let located: Vec<Located> = readings.position.par_iter().map(|&at| locator.locate(at, nearest.map_units)).collect();
     let count = |wanted: fn(&Located) -> bool| located.iter().filter(|l| wanted(l)).count();
     let mut notices = Vec::new();
     let on_boundary = count(|l| matches!(l, Located::OnBoundary { shared: true, .. }));
@@ -126,11 +140,21 @@ pub fn by_polygons(polygons: Vec<NamedPolygon>, readings: &Readings, nearest: f6
         notices.push(Notice::info(
             "station-joined-nearest",
             Place::default(),
-            format!("{joined} readings outside every polygon joined the nearest domain within {nearest} map units"),
+            format!("{joined} readings outside every polygon joined the nearest domain within {} m", nearest.metres),
         ));
     }
     let outside = count(|l| matches!(l, Located::Outside));
-    if outside > 0 {
+    if outside == readings.len() && outside > 0 {
+        let least = readings.position.par_iter().map(|&at| locator.distance(at)).reduce(|| f64::INFINITY, f64::min);
+        notices.push(
+            Notice::warning(
+                "all-stations-outside",
+                Place::default(),
+                format!("all {outside} readings lie outside every polygon, the nearest {least:.6} map units away"),
+            )
+            .hint("check the CRS of the stations and of the polygons"),
+        );
+    } else if outside > 0 {
         notices.push(
             Notice::warning(
                 "station-outside",
@@ -149,5 +173,5 @@ pub fn by_polygons(polygons: Vec<NamedPolygon>, readings: &Readings, nearest: f6
         .enumerate()
         .map(|(i, p)| Domain { id: DomainId::of_index(i), name: p.name, shape: p.shape })
         .collect();
-    (Domains { method: Method::Polygons, list, of }, notices)
+    (Domains { method, list, of }, notices)
 }

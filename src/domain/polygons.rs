@@ -1,7 +1,7 @@
 //! The user's domain polygons, made valid: closed, not self-crossing, one per name, overlaps known.
 
 use crate::notice::{Notice, Place};
-use geo::{Area, BooleanOps, BoundingRect, Geometry, MakeValid, MultiPolygon, Point, Validation};
+use geo::{Area, BooleanOps, BoundingRect, CoordsIter, Geometry, MakeValid, MultiPolygon, Point, Validation};
 use rayon::prelude::*;
 use rstar::primitives::{GeomWithData, Rectangle};
 use rstar::{AABB, RTree};
@@ -64,6 +64,8 @@ pub enum DomainError {
 
 /// Overlaps smaller than this share of the smaller polygon are round-off of digitised boundaries.
 const NEGLIGIBLE_OVERLAP: f64 = 1e-9;
+/// Polygons of more vertices are checked by the caller's quick test.
+const MANY_VERTICES: usize = 1000;
 /// How many overlapping pairs are named one by one.
 const OVERLAPS_NAMED: usize = 20;
 
@@ -71,14 +73,18 @@ const OVERLAPS_NAMED: usize = 20;
 ///
 /// Invalid rings are repaired where the repair keeps an area (odd-even rule, reported with the feature), and
 /// the feature is left out with a warning where it does not. Overlaps are reported with their area.
+///
+/// `quick` answers validity for polygons of many vertices, for which the library's own check takes quadratic time.
 pub fn clean(
     file: &str,
     features: Vec<(u64, String, Option<Geometry<f64>>)>,
     same_name: SameName,
+    quick: &dyn Fn(&MultiPolygon<f64>) -> bool,
 ) -> Result<(Vec<NamedPolygon>, Vec<Notice>), DomainError> {
     let mut notices = Vec::new();
     let mut polygons: Vec<NamedPolygon> = Vec::new();
     let mut first_of: HashMap<String, (u64, usize)> = HashMap::new();
+    let any_polygon = features.iter().any(|(_, _, g)| g.as_ref().is_some_and(|g| parts_of(g).is_some()));
     for (feature, name, geometry) in features {
         let place = Place::file(file).at_row(feature);
         let Some(geometry) = geometry else {
@@ -89,8 +95,8 @@ pub fn clean(
             ));
             continue;
         };
-        let shape = as_multi_polygon(file, feature, geometry)?;
-        let Some(shape) = valid(shape, &name, place, &mut notices) else { continue };
+        let Some(shape) = as_multi_polygon(file, feature, geometry, any_polygon, &mut notices)? else { continue };
+        let Some(shape) = valid(shape, &name, place, quick, &mut notices) else { continue };
         match first_of.get(&name) {
             Some(&(first, _)) if same_name == SameName::Refuse => {
                 return Err(DomainError::SameName { file: file.to_owned(), name, first, second: feature });
@@ -112,21 +118,61 @@ pub fn clean(
     Ok((polygons, notices))
 }
 
-fn as_multi_polygon(file: &str, feature: u64, geometry: Geometry<f64>) -> Result<MultiPolygon<f64>, DomainError> {
-    let found = match geometry {
-        Geometry::Polygon(p) => return Ok(MultiPolygon::new(vec![p])),
-        Geometry::MultiPolygon(m) => return Ok(m),
-        Geometry::Rect(r) => return Ok(MultiPolygon::new(vec![r.to_polygon()])),
-        Geometry::Triangle(t) => return Ok(MultiPolygon::new(vec![t.to_polygon()])),
-        Geometry::Point(_) | Geometry::MultiPoint(_) => "point",
-        Geometry::Line(_) | Geometry::LineString(_) | Geometry::MultiLineString(_) => "line",
-        Geometry::GeometryCollection(_) => "geometry collection",
-    };
-    Err(DomainError::NotAPolygon { file: file.to_owned(), feature, found })
+/// The polygons of a geometry, also those inside a collection; `None` where it has none.
+fn parts_of(geometry: &Geometry<f64>) -> Option<MultiPolygon<f64>> {
+    match geometry {
+        Geometry::Polygon(p) => Some(MultiPolygon::new(vec![p.clone()])),
+        Geometry::MultiPolygon(m) => Some(m.clone()),
+        Geometry::Rect(r) => Some(MultiPolygon::new(vec![r.to_polygon()])),
+        Geometry::Triangle(t) => Some(MultiPolygon::new(vec![t.to_polygon()])),
+        Geometry::GeometryCollection(all) => {
+            let parts: Vec<_> = all.iter().filter_map(parts_of).flat_map(|m| m.0).collect();
+            (!parts.is_empty()).then(|| MultiPolygon::new(parts))
+        }
+        _ => None,
+    }
 }
 
-fn valid(shape: MultiPolygon<f64>, name: &str, place: Place, notices: &mut Vec<Notice>) -> Option<MultiPolygon<f64>> {
-    let Err(fault) = shape.check_validation() else {
+/// A feature's polygons. One of another kind among polygons is left out with a warning; a file with no polygon at
+/// all is an error.
+fn as_multi_polygon(
+    file: &str,
+    feature: u64,
+    geometry: Geometry<f64>,
+    any_polygon: bool,
+    notices: &mut Vec<Notice>,
+) -> Result<Option<MultiPolygon<f64>>, DomainError> {
+    if let Some(shape) = parts_of(&geometry) {
+        return Ok(Some(shape));
+    }
+    let found = match geometry {
+        Geometry::Point(_) | Geometry::MultiPoint(_) => "point",
+        Geometry::Line(_) | Geometry::LineString(_) | Geometry::MultiLineString(_) => "line",
+        _ => "geometry collection",
+    };
+    if !any_polygon {
+        return Err(DomainError::NotAPolygon { file: file.to_owned(), feature, found });
+    }
+    let message = format!("a {found} is no domain and was left out");
+    notices.push(Notice::warning("domain-not-a-polygon", Place::file(file).at_row(feature), message));
+    Ok(None)
+}
+
+fn valid(
+    shape: MultiPolygon<f64>,
+    name: &str,
+    place: Place,
+    quick: &dyn Fn(&MultiPolygon<f64>) -> bool,
+    notices: &mut Vec<Notice>,
+) -> Option<MultiPolygon<f64>> {
+    let verdict = if shape.coords_count() <= MANY_VERTICES {
+        shape.check_validation().map_err(|fault| fault.to_string())
+    } else if quick(&shape) {
+        Ok(())
+    } else {
+        Err("its rings cross or touch where they may not".to_owned())
+    };
+    let Err(fault) = verdict else {
         if shape.unsigned_area() > 0.0 {
             return Some(shape);
         }
@@ -240,7 +286,7 @@ mod tests {
     #[test]
     fn a_bow_tie_is_repaired_and_named() {
         let bow = wkt!(POLYGON((0. 0.,0. 10.,10. 0.,10. 10.,0. 0.))).into();
-        let (polygons, notices) = clean("f", vec![feature(7, "north", bow)], SameName::Refuse).unwrap();
+        let (polygons, notices) = clean("f", vec![feature(7, "north", bow)], SameName::Refuse, &|_| true).unwrap();
         assert_eq!(polygons[0].shape.unsigned_area(), 50.0);
         assert_eq!(notices[0].code, "domain-repaired");
         assert_eq!(notices[0].place.row, Some(7));
@@ -251,14 +297,16 @@ mod tests {
         let flat = wkt!(POLYGON((0. 0.,5. 0.,10. 0.,0. 0.))).into();
         let square = wkt!(POLYGON((0. 0.,0. 1.,1. 1.,1. 0.,0. 0.))).into();
         let (polygons, notices) =
-            clean("f", vec![feature(1, "flat", flat), feature(2, "square", square)], SameName::Refuse).unwrap();
+            clean("f", vec![feature(1, "flat", flat), feature(2, "square", square)], SameName::Refuse, &|_| true)
+                .unwrap();
         assert_eq!(polygons.len(), 1);
         assert!(notices[0].code.starts_with("domain-") && notices[0].message.contains("\"flat\""), "{notices:?}");
     }
 
     #[test]
     fn points_are_no_domains() {
-        let error = clean("f", vec![feature(3, "p", Point::new(1.0, 2.0).into())], SameName::Refuse).unwrap_err();
+        let error =
+            clean("f", vec![feature(3, "p", Point::new(1.0, 2.0).into())], SameName::Refuse, &|_| true).unwrap_err();
         assert!(error.to_string().contains("feature 3 is a point"), "{error}");
     }
 
@@ -266,8 +314,8 @@ mod tests {
     fn one_name_twice_stops_or_merges() {
         let a = || feature(1, "n", wkt!(POLYGON((0. 0.,0. 1.,1. 1.,1. 0.,0. 0.))).into());
         let b = || feature(2, "n", wkt!(POLYGON((5. 0.,5. 1.,6. 1.,6. 0.,5. 0.))).into());
-        assert!(matches!(clean("f", vec![a(), b()], SameName::Refuse), Err(DomainError::SameName { .. })));
-        let (merged, _) = clean("f", vec![a(), b()], SameName::Merge).unwrap();
+        assert!(matches!(clean("f", vec![a(), b()], SameName::Refuse, &|_| true), Err(DomainError::SameName { .. })));
+        let (merged, _) = clean("f", vec![a(), b()], SameName::Merge, &|_| true).unwrap();
         assert_eq!((merged.len(), merged[0].shape.unsigned_area()), (1, 2.0));
     }
 
@@ -276,7 +324,7 @@ mod tests {
         let a = feature(1, "a", wkt!(POLYGON((0. 0.,0. 10.,10. 10.,10. 0.,0. 0.))).into());
         let b = feature(2, "b", wkt!(POLYGON((8. 0.,8. 10.,20. 10.,20. 0.,8. 0.))).into());
         let c = feature(3, "c", wkt!(POLYGON((20. 0.,20. 10.,30. 10.,30. 0.,20. 0.))).into());
-        let (_, notices) = clean("f", vec![a, b, c], SameName::Refuse).unwrap();
+        let (_, notices) = clean("f", vec![a, b, c], SameName::Refuse, &|_| true).unwrap();
         assert_eq!(notices.len(), 1, "{notices:?}");
         assert!(notices[0].message.contains("20.00 square"), "{}", notices[0].message);
     }

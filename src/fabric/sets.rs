@@ -24,6 +24,8 @@ const MOST_SEARCHED: usize = 2000;
 /// Parts are one set where the density between them stays above this share of the lesser peak.
 const DIP: f64 = 0.7;
 
+/// Means nearer than this, degrees, belong to one set: surfaces of one set undulate as much (judgement).
+const LEAST_APART: f64 = 15.0;
 /// A difference in BIC beyond doubt (Kass & Raftery 1995 call 10 very strong; from memory).
 const FAR_BEHIND: f64 = 20.0;
 
@@ -208,7 +210,8 @@ fn joined(m: &Mixture) -> Vec<usize> {
         for j in 0..i {
             let (a, b) = (m.parts[i].mean, m.parts[j].mean);
             let between = lowest(&a, &b).max(lowest(&a, &-b));
-            if between > DIP * m.density(&a).min(m.density(&b)) {
+            let near = a.dot(&b).abs() > LEAST_APART.to_radians().cos();
+            if near || between > DIP * m.density(&a).min(m.density(&b)) {
                 let (keep, drop) = (group[j].min(group[i]), group[j].max(group[i]));
                 group.iter_mut().filter(|g| **g == drop).for_each(|g| *g = keep);
             }

@@ -133,6 +133,9 @@ pub(super) fn classify(e: &Evidence) -> (Shape, Vec<String>) {
     (shape, notes)
 }
 
+/// Scatter along an arc shorter than this (degrees, holding 90 % of the axes) is a cluster whatever its form: it is
+/// hardly more than what a compass and an undulating surface give (judgement).
+const TIGHT: f64 = 20.0;
 /// Maxima within this many degrees of a great circle lie on it.
 const ON_CIRCLE: f64 = 20.0;
 
@@ -153,6 +156,12 @@ fn band(e: &Evidence, notes: &mut Vec<String>) -> Shape {
         return Shape::Transitional;
     }
     if super::axis_cone::effective_units(e.units) < super::TRUSTED {
+        return Shape::Cluster;
+    }
+    if arc < TIGHT {
+        notes.push(format!(
+            "elongate, but within {arc:.0} degrees: Fisher's statistics take the scatter as round, the cone of the mean does not"
+        ));
         return Shape::Cluster;
     }
     notes.push(format!("elongate over {arc:.0} degrees of a great circle, narrow enough for a mean"));

@@ -16,6 +16,7 @@ mod shapes;
 mod text;
 
 pub use error::FormatError;
+pub use ogr::is_valid_polygon;
 
 use crate::notice::{Notice, Progress, Refusal};
 use crate::table::Table;

@@ -14,6 +14,14 @@ pub enum AreaFileError {
         /// What the system says.
         cause: std::io::Error,
     },
+    /// It is no area file but a source of stations.
+    #[error(
+        "{file}: is not an area file (TOML); to run on a station file alone: homocline run --stations {file} --out FOLDER"
+    )]
+    NotToml {
+        /// The file.
+        file: String,
+    },
     /// It is not text.
     #[error("{file}: is not UTF-8 text; save it as UTF-8")]
     NotUtf8 {
@@ -67,7 +75,19 @@ impl AreaFileError {
     pub fn syntax(file: &str, text: &str, error: &toml::de::Error) -> Self {
         let start = error.span().map_or(0, |span| span.start.min(text.len()));
         let line = text.as_bytes()[..start].iter().filter(|&&b| b == b'\n').count() + 1;
-        Self::Syntax { file: file.to_owned(), line, message: error.message().trim().replace('\n', " ") }
+        // The parser speaks of Rust's types; the user knows numbers, texts and lists.
+        let words = [
+            ("a sequence", "a list"),
+            ("u64", "a whole number"),
+            ("u32", "a whole number"),
+            ("f64", "a number"),
+            (" a string", " a text"),
+            ("string \"", "the text \""),
+            ("map", "a table"),
+        ];
+        let plain = error.message().trim().replace('\n', " ");
+        let message = words.iter().fold(plain, |text, (typed, said)| text.replace(typed, said));
+        Self::Syntax { file: file.to_owned(), line, message }
     }
     /// A value outside what is allowed.
     pub fn value(file: &str, key: &str, value: impl ToString, message: impl Into<String>) -> Self {

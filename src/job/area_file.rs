@@ -4,6 +4,7 @@
 
 use super::area_error::AreaFileError;
 use super::area_keys::first_unknown;
+use super::one_or_many::OneOrMany;
 use serde::{Deserialize, Serialize};
 use std::collections::BTreeMap;
 use std::path::Path;
@@ -28,32 +29,6 @@ pub struct AreaFile {
     pub symbols: SymbolsSection,
     /// `[output]`
     pub output: OutputSection,
-}
-
-/// A table, or an array of tables.
-#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
-pub enum OneOrMany<T> {
-    /// `[stations]`
-    One(Box<T>),
-    /// `[[stations]]`
-    Many(Vec<T>),
-}
-
-impl<T> Default for OneOrMany<T> {
-    fn default() -> Self {
-        Self::Many(Vec::new())
-    }
-}
-
-impl<T> OneOrMany<T> {
-    /// All of them.
-    pub fn iter(&self) -> impl Iterator<Item = &T> {
-        match self {
-            Self::One(one) => std::slice::from_ref(one.as_ref()).iter(),
-            Self::Many(many) => many.iter(),
-        }
-    }
 }
 
 /// `[area]`
@@ -98,7 +73,7 @@ pub struct StationsSection {
 
 /// A number or a text.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
+#[serde(untagged, expecting = "expected a number or a text")]
 pub enum NumberOrText {
     /// A number.
     Number(f64),
@@ -108,7 +83,7 @@ pub enum NumberOrText {
 
 /// A date, written as a TOML date or as text.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
+#[serde(untagged, expecting = "expected a date, as 2024-06-01")]
 pub enum DateValue {
     /// `2024-06-01`
     Date(toml::value::Datetime),
@@ -150,7 +125,7 @@ pub struct ColumnsSection {
 
 /// A column, or one value for every row.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
+#[serde(untagged, expecting = "expected a column name, or { value = \"bedding\" } for every row")]
 pub enum ColumnOrValue {
     /// `structure = "column"`
     Column(String),
@@ -163,7 +138,10 @@ pub enum ColumnOrValue {
 
 /// What a source spelling stands for.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
+#[serde(
+    untagged,
+    expecting = "expected a structure name, or { name = \"banding\", kind = \"planar\" } for one of your own"
+)]
 pub enum StructureName {
     /// `S0 = "bedding"`
     Name(String),
@@ -204,7 +182,7 @@ pub struct DomainsSection {
 
 /// One structure or several.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
+#[serde(untagged, expecting = "expected a structure, or a list of them")]
 pub enum StructureChoice {
     /// One.
     One(String),
@@ -332,6 +310,12 @@ impl AreaFile {
     /// Reads an area file; returns it with its text.
     pub fn read(path: &Path) -> Result<(Self, String), AreaFileError> {
         let file = path.display().to_string();
+        let ending = path.extension().map(|e| e.to_string_lossy().to_lowercase()).unwrap_or_default();
+        if ["csv", "tsv", "txt", "geojson", "json", "shp", "gpkg", "zip", "kml"].contains(&ending.as_str())
+            && path.exists()
+        {
+            return Err(AreaFileError::NotToml { file });
+        }
         let bytes = std::fs::read(path).map_err(|cause| AreaFileError::Unreadable { file: file.clone(), cause })?;
         let text = String::from_utf8(bytes).map_err(|_| AreaFileError::NotUtf8 { file })?;
         let text = text.strip_prefix('\u{feff}').unwrap_or(&text).to_owned();

@@ -1,6 +1,7 @@
 //! Why a job stopped. Each message names the file and what to do.
 
 use super::area_error::AreaFileError;
+use super::gather::Checked;
 use super::outputs::OutputError;
 use crate::crs::CrsError;
 use crate::domain::DomainError;
@@ -39,23 +40,22 @@ pub enum JobError {
         file: String,
     },
     /// A shape has no place on the map.
-    #[error("{file}: feature {feature} has vertices with no place in {crs}")]
+    #[error(
+        "{file}: feature {feature} has vertices with no place in {crs}, read as {from}; GeoJSON that does not name its CRS is longitude and latitude by its standard"
+    )]
     OffTheMap {
         /// The file.
         file: String,
         /// Feature id or line.
         feature: u64,
+        /// The CRS the file says.
+        from: String,
         /// The map CRS.
         crs: String,
     },
     /// Every row was refused.
-    #[error("no reading is left: all {refused} rows were refused, the first because: {first}")]
-    NothingLeft {
-        /// How many.
-        refused: u64,
-        /// The reason of the first.
-        first: String,
-    },
+    #[error("no reading is left{}", .0.why())]
+    NothingLeft(Box<Checked>),
     /// An input vanished or changed while it was hashed.
     #[error("{file}: cannot be read: {cause}")]
     Unreadable {

@@ -54,38 +54,58 @@ pub(super) fn groups(readings: &Readings, domains: &Domains, stations: &[u32]) -
 }
 
 /// A number per reading, equal for readings of one station: those of one source with one id, and those without
-/// an id at exactly one place.
-pub(super) fn stations(readings: &Readings) -> (Vec<u32>, Option<Notice>) {
+/// an id at exactly one place. `metres` is the length of a map unit.
+pub(super) fn stations(readings: &Readings, metres: f64) -> (Vec<u32>, Vec<Notice>) {
     let mut by_id: HashMap<(u16, &str), u32> = HashMap::new();
     let mut by_place: HashMap<(u64, u64), u32> = HashMap::new();
-    let mut next = 0_u32;
-    let mut fresh = || {
-        next += 1;
-        next - 1
-    };
-    let numbers = (0..readings.len())
-        .map(|i| match readings.station_id.get(i) {
-            Some(id) => *by_id.entry((readings.source[i], id)).or_insert_with(&mut fresh),
+    // Where each station was first met, and how far from there it was met again.
+    let mut first: Vec<(usize, f64)> = Vec::new();
+    let mut without_id = 0_usize;
+    let mut numbers = Vec::with_capacity(readings.len());
+    for i in 0..readings.len() {
+        let at = readings.position[i];
+        let next = first.len() as u32;
+        let number = match readings.station_id.get(i) {
+            Some(id) => *by_id.entry((readings.source[i], id)).or_insert(next),
             None => {
-                let at = readings.position[i];
+                without_id += 1;
                 // + 0.0 makes -0 and 0 one place.
-                let key = ((at.x + 0.0).to_bits(), (at.y + 0.0).to_bits());
-                *by_place.entry(key).or_insert_with(&mut fresh)
+                *by_place.entry(((at.x + 0.0).to_bits(), (at.y + 0.0).to_bits())).or_insert(next)
             }
-        })
-        .collect();
-    let without_id = (0..readings.len()).filter(|&i| readings.station_id.get(i).is_none()).count();
-    let shared = without_id - by_place.len();
-    let notice = (shared > 0).then(|| {
-        Notice::warning(
-            "stations-by-place",
-            Place::default(),
-            format!(
-                "{without_id} readings have no station id and lie at {} places; readings at exactly one place count as one station",
-                by_place.len()
-            ),
-        )
-        .hint("name the id column with stations.columns.id")
-    });
-    (numbers, notice)
+        };
+        if number == next {
+            first.push((i, 0.0));
+        }
+        let (start, apart) = &mut first[number as usize];
+        *apart = apart.max((at.x - readings.position[*start].x).hypot(at.y - readings.position[*start].y));
+        numbers.push(number);
+    }
+    let mut notices = Vec::new();
+    if without_id > by_place.len() {
+        let message = format!(
+            "{without_id} readings have no station id and lie at {} different places; readings at exactly one place count as one station",
+            by_place.len()
+        );
+        notices.push(
+            Notice::warning("stations-by-place", Place::default(), message)
+                .hint("name the id column with stations.columns.id"),
+        );
+    }
+    let wide = first.iter().filter(|(_, apart)| apart * metres > WIDEST_STATION).count();
+    let widest = first.iter().copied().reduce(|a, b| if b.1 > a.1 { b } else { a });
+    if let (true, Some((reading, apart))) = (wide > 0, widest) {
+        let id = readings.station_id.get(reading).unwrap_or_default();
+        let message = format!(
+            "stations whose readings lie more than {WIDEST_STATION} m apart: {wide}, the widest \"{id}\" with {:.0} m; each still counts as one station",
+            apart * metres
+        );
+        let place = Place::file(&readings.sources[readings.source[reading] as usize]);
+        notices.push(
+            Notice::warning("station-wide", place, message).hint("is stations.columns.id really the station's id?"),
+        );
+    }
+    (numbers, notices)
 }
+
+/// Readings of one outcrop lie closer than this, whatever the receiver.
+const WIDEST_STATION: f64 = 250.0;

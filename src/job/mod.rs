@@ -3,11 +3,14 @@
 mod area_error;
 mod area_file;
 mod area_keys;
+mod domains;
 mod error;
 mod exposure;
 mod fabric_plan;
 mod gather;
+mod ground;
 mod grouping;
+mod one_or_many;
 mod outputs;
 mod paths;
 mod plan;

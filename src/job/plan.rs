@@ -1,11 +1,13 @@
 //! The plan: an area file checked against what the job needs, with every path resolved.
 
-use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, OneOrMany, StationsSection, StructureName};
+use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, StationsSection, StructureName};
 use super::fabric_plan::FabricPlan;
+use super::one_or_many::OneOrMany;
 use super::paths::Located;
 use super::{AreaFileError, JobError};
 use crate::domain::SameName;
 use crate::input::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
+use crate::notice::{Notice, Place};
 use crate::orientation::notation::Notation;
 use crate::station::Kind;
 use std::collections::BTreeMap;
@@ -34,13 +36,7 @@ pub(super) enum DomainPlan {
     /// One for the whole area.
     Single,
     /// The user's polygons.
-    Polygons {
-        source: Located,
-        name: Option<String>,
-        same_name: SameName,
-        /// Metres.
-        nearest: f64,
-    },
+    Polygons { source: Located, name: Option<String>, same_name: SameName },
 }
 
 /// A job that can be run. Exists only after everything that can be checked without reading data was.
@@ -52,6 +48,12 @@ pub struct Plan {
     pub(super) sources: Vec<(Located, StationSpec)>,
     pub(super) domains: DomainPlan,
     pub(super) outline: Option<Located>,
+    /// A station outside every polygon joins the nearest within this many metres.
+    pub(super) nearest: f64,
+    /// The area file as messages name it.
+    pub(super) label: String,
+    /// What is worth saying before anything is read.
+    pub(super) notices: Vec<Notice>,
     pub(super) fabric: FabricPlan,
     pub(super) folder: PathBuf,
     /// The options as used, for the record.
@@ -72,10 +74,10 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
         None => (AreaFile::default(), PathBuf::new(), "the command line".to_owned(), None),
     };
     let here = Path::new("");
+    let mut notices = Vec::new();
     let from_command_line = !overrides.stations.is_empty();
     if from_command_line {
-        let section = |file: &String| StationsSection { file: file.clone(), ..StationsSection::default() };
-        options.stations = OneOrMany::Many(overrides.stations.iter().map(section).collect());
+        notices.extend(replace_files(&mut options.stations, &overrides.stations));
     }
     let mut polygons_base = base.as_path();
     if let Some(polygons) = &overrides.polygons {
@@ -96,6 +98,8 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
     check.not_yet(&options)?;
     let sources = check.sources(&options, if from_command_line { here } else { &base })?;
     let domains = check.domains(&mut options, polygons_base)?;
+    notices.extend(unused(&options));
+    notices.extend(same_twice(&sources));
     let folder = overrides.out.clone().unwrap_or_else(|| base.join(&options.output.folder));
     let title = options.area.name.clone().unwrap_or_else(|| {
         area.and_then(Path::file_stem).map_or_else(|| "area".into(), |stem| stem.to_string_lossy().into_owned())
@@ -106,9 +110,12 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
         crs: options.area.crs.clone(),
         sources,
         domains,
+        nearest: options.domains.nearest_m,
+        notices,
         outline: options.domains.outline.as_deref().map(|o| Located::new(o, &base)),
         fabric: FabricPlan::new(&label, &options)?,
         folder,
+        label,
         options,
         text,
     })
@@ -118,6 +125,64 @@ pub fn plan(area: Option<&Path>, overrides: &Overrides) -> Result<Plan, JobError
 type Spellings = BTreeMap<String, String>;
 /// Kinds of the user's own structures.
 type Kinds = BTreeMap<String, Kind>;
+
+/// Puts the command line's files in place of the area file's; everything else that the sections say stays, where it
+/// is plain which section is meant.
+fn replace_files(stations: &mut OneOrMany<StationsSection>, files: &[String]) -> Option<Notice> {
+    let typed: Vec<StationsSection> = stations.iter().cloned().collect();
+    let like = |section: &StationsSection, file: &String| StationsSection {
+        file: file.clone(),
+        layer: None,
+        ..section.clone()
+    };
+    let (sections, notice) = match typed.as_slice() {
+        [one] => (files.iter().map(|f| like(one, f)).collect(), None),
+        many if many.len() == files.len() => (many.iter().zip(files).map(|(s, f)| like(s, f)).collect(), None),
+        many => {
+            let plain = StationsSection::default();
+            let message = format!(
+                "--stations names {} files for the {} [[stations]] of the area file: their north, notation, columns and CRS are not used",
+                files.len(),
+                many.len()
+            );
+            let notice = Notice::warning("stations-settings-dropped", Place::default(), message);
+            (files.iter().map(|f| like(&plain, f)).collect(), (!many.is_empty()).then_some(notice))
+        }
+    };
+    *stations = OneOrMany::Many(sections);
+    notice
+}
+
+/// Settings that have no effect as the rest stands.
+fn unused(options: &AreaFile) -> Vec<Notice> {
+    let (domains, default) = (&options.domains, AreaFile::default());
+    let is_polygons = domains.method.as_deref() == Some("polygons");
+    let cases = [
+        (domains.polygons.is_some() && !is_polygons, "domains.polygons", "domains.method is not \"polygons\""),
+        (domains.faults.is_some(), "domains.faults", "faults are not used with this domains.method"),
+        (domains.outline.is_some() && is_polygons, "domains.outline", "the polygons are the domains"),
+        (
+            domains.nearest_m > 0.0 && !is_polygons && domains.outline.is_none(),
+            "domains.nearest_m",
+            "there is no polygon to be near",
+        ),
+        (options.symbols != default.symbols, "[symbols]", "this version does not thin symbols yet"),
+        (options.compare != default.compare, "[compare]", "this version does not compare domains yet"),
+    ];
+    let said = cases.into_iter().filter(|(is_unused, ..)| *is_unused);
+    said.map(|(_, key, why)| Notice::info("setting-unused", Place::default(), format!("{key} has no effect: {why}")))
+        .collect()
+}
+
+/// Two sources that are one file read in one way: every reading would count twice.
+fn same_twice(sources: &[(Located, StationSpec)]) -> Vec<Notice> {
+    let twice = |i: usize| sources[..i].iter().any(|s| *s == sources[i]);
+    let message = "is named twice with the same settings: each of its readings counts twice";
+    (0..sources.len())
+        .filter(|&i| twice(i))
+        .map(|i| Notice::warning("source-twice", Place::file(&sources[i].0.named), message))
+        .collect()
+}
 
 struct Checker<'a> {
     file: &'a str,
@@ -149,6 +214,9 @@ impl Checker<'_> {
         within("symbols.spacing_mm", options.symbols.spacing_mm, 0.0, 1000.0)?;
         let exposures = ["none", "map", "scanline", "plane", "column"];
         self.one_of("fabric.terzaghi", &options.fabric.terzaghi, &exposures)?;
+        if options.output.formats.is_empty() {
+            return Err(self.value("output.formats", "[]", "must name at least \"gpkg\""));
+        }
         for format in &options.output.formats {
             self.one_of("output.formats", format, &["gpkg"])?;
         }
@@ -182,7 +250,6 @@ impl Checker<'_> {
             source: Located::new(polygons, base),
             name: section.name.clone(),
             same_name: if section.same_name == "merge" { SameName::Merge } else { SameName::Refuse },
-            nearest: section.nearest_m,
         })
     }
 

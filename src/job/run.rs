@@ -55,8 +55,8 @@ pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
     targets.extend(style_names.iter().map(String::as_str));
     let mut staging = Staging::prepare(&plan.folder, &targets, &inputs(plan))?;
 
-    let Gathered { map, readings, tables, domains, refusals, mut notices, counts } = gather(plan, progress)?;
-    let statistics = describe(plan, &readings, &tables, &domains, &map, progress);
+    let Gathered { map, ground, readings, tables, domains, refusals, mut notices, counts } = gather(plan, progress)?;
+    let statistics = describe(plan, &readings, &tables, &domains, &map, ground.metres, progress);
     notices.extend(statistics.notices);
     let fabrics = statistics.fabrics;
     let results = Results {
@@ -70,7 +70,7 @@ pub fn run(plan: &Plan, progress: &dyn Progress) -> Result<Outcome, JobError> {
         refusals: &refusals,
         crs: map.code_or_wkt(),
         geographic: !map.is_projected(),
-        metres: map.unit_in_metres().unwrap_or(1.0),
+        metres: ground.metres,
     };
     progress.begin("making layers", None);
     let layers: Vec<_> = layer::ALL.iter().map(|layer| (layer.table)(&results)).collect();
@@ -171,7 +171,12 @@ fn style_of(table: &Table) -> Option<Style> {
         name: table.name.clone(),
         qml: style::qml(&table.name, &codes)?,
         sld: if table.name == "orientations" { style::sld(Turning::Clockwise) } else { String::new() },
-        description: "Symbols after FGDC-STD-013-2006, turned by rotation_grid".to_owned(),
+        description: if codes.is_empty() {
+            "Areas with their names"
+        } else {
+            "Symbols after FGDC-STD-013-2006, turned by rotation_grid"
+        }
+        .to_owned(),
         default: true,
     })
 }

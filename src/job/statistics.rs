@@ -57,9 +57,10 @@ pub(super) fn describe(
     tables: &[Table],
     domains: &Domains,
     map: &MapCrs,
+    metres: f64,
     progress: &dyn Progress,
 ) -> Statistics {
-    let (stations, notice) = stations(readings);
+    let (stations, notices) = stations(readings, metres);
     let groups = groups(readings, domains, &stations);
     progress.begin("summarising fabrics", Some(groups.len() as u64));
     let mut inside: Vec<Option<Coord<f64>>> =
@@ -83,7 +84,7 @@ pub(super) fn describe(
         folds: Vec::new(),
         sets: Vec::new(),
         set_of: vec![None; readings.len()],
-        notices: notice.into_iter().collect(),
+        notices,
     };
     for d in described {
         all.fabrics.push(d.placed);

@@ -35,10 +35,16 @@ pub(super) fn fields(results: &Results, taken: &Table) -> Vec<Field> {
     let mut used: HashSet<String> = ["fid", "geom"].map(str::to_owned).into();
     used.extend(taken.fields.iter().map(|f| f.name.to_lowercase()));
     let mut groups: Vec<(String, Vec<Option<usize>>)> = Vec::new();
-    let mut group_of: HashMap<String, usize> = HashMap::new();
+    // Columns of one source whose names differ by case alone stay apart: the second of them is another group.
+    let mut group_of: HashMap<(String, usize), usize> = HashMap::new();
     for (source, table) in results.sources.iter().enumerate() {
+        let mut seen: HashMap<String, usize> = HashMap::new();
         for (position, field) in table.fields.iter().enumerate() {
-            let group = *group_of.entry(field.name.to_lowercase()).or_insert_with(|| {
+            let lower = field.name.to_lowercase();
+            let before = seen.entry(lower.clone()).or_default();
+            let key = (lower, *before);
+            *before += 1;
+            let group = *group_of.entry(key).or_insert_with(|| {
                 groups.push((field.name.clone(), vec![None; results.sources.len()]));
                 groups.len() - 1
             });

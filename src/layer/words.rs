@@ -39,7 +39,9 @@ pub(super) fn described(name: &str) -> String {
     if let Some(s) = fabric::ALL.iter().find(|s| s.name == name) {
         let unit = if s.unit.is_empty() { String::new() } else { format!(" Unit: {}.", s.unit) };
         let least = if s.least_n > 1 { format!(" Needs {} readings.", s.least_n) } else { String::new() };
-        return format!("{}{unit}{least} Source: {}.", s.description, s.source);
+        let is_published = s.source.bytes().any(|b| b.is_ascii_digit());
+        let source = if is_published { format!(" Source: {}.", s.source) } else { String::new() };
+        return format!("{}{unit}{least}{source}", s.description);
     }
     OTHERS.iter().find(|o| o.0 == name).map_or_else(String::new, |o| o.2.to_owned())
 }

@@ -76,6 +76,8 @@ pub struct Package<'a> {
 pub const KEY: &str = "fid";
 /// Name of the geometry column in every layer that has one.
 pub const GEOMETRY: &str = "geom";
+/// Most columns of a layer beside key and geometry: SQLite's default limit is 2000.
+const MOST_COLUMNS: usize = 1990;
 /// Longest name of a style.
 const STYLE_NAME: usize = 30;
 
@@ -133,6 +135,10 @@ impl LayerToWrite<'_> {
             names.insert(GEOMETRY.to_owned());
         }
         let rows = self.table.len();
+        if self.table.fields.len() > MOST_COLUMNS {
+            let columns = self.table.fields.len();
+            return Some(format!("{columns} columns, where a GeoPackage layer holds {MOST_COLUMNS} at most"));
+        }
         for field in &self.table.fields {
             if field.name.is_empty() || field.name.contains('\0') {
                 return Some(format!("\"{}\" cannot be the name of a column", field.name));

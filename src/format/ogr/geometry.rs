@@ -2,6 +2,7 @@
 
 use gdal::vector::Geometry as Ogr;
 use gdal::vector::OGRwkbGeometryType as Kind;
+use gdal::vector::ToGdal;
 use gdal::vector::geometry_type_flatten;
 use geo_types::{
     Coord, Geometry, GeometryCollection, LineString, MultiLineString, MultiPoint, MultiPolygon, Point, Polygon,
@@ -31,6 +32,11 @@ pub(super) fn convert(ogr: &Ogr) -> Result<Option<Geometry<f64>>, String> {
         }
         _ => return Err(ogr.geometry_name()),
     }))
+}
+
+/// True where a polygon's rings neither cross nor overlap, as GEOS (through GDAL) sees it, in n log n time.
+pub fn is_valid_polygon(shape: &MultiPolygon<f64>) -> bool {
+    shape.to_gdal().is_ok_and(|ogr| ogr.is_valid())
 }
 
 /// The parts that are not empty.

@@ -9,6 +9,8 @@ mod shapefile;
 
 pub(super) use create::{CreateError, LayerSpec, create};
 
+pub use geometry::is_valid_polygon;
+
 use super::{FormatError, ReadTable, Source};
 use crate::notice::Progress;
 use std::cell::RefCell;
