@@ -24,8 +24,7 @@ impl ExposurePlan {
     pub fn new(section: &FabricSection, columns: Vec<Option<String>>) -> Result<Self, (&'static str, String, String)> {
         let needed = |key: &'static str, value: &Option<String>, form: &str| {
             let text = value.clone().unwrap_or_default();
-            let parsed = pair(&text).ok_or_else(|| (key, format!("\"{text}\""), format!("must be {form}")));
-            parsed.map(|(a, i)| (a, i))
+            pair(&text).ok_or_else(|| (key, format!("\"{text}\""), format!("must be {form}")))
         };
         Ok(match section.terzaghi.as_str() {
             "map" => Self::One(Exposure::Map),
