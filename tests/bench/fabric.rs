@@ -32,7 +32,9 @@ fn fabric(c: &mut Criterion) {
     c.bench_function("percentile bootstrap, 10,000 readings, 1,000 resamples", |b| {
         b.iter(|| bootstrap::percentile(black_box(&sample), 2, 1_000, 0.95, 1))
     });
-    c.bench_function("summary, 10,000 readings", |b| b.iter(|| summarise(black_box(&sample), &FabricOptions::default())));
+    c.bench_function("summary, 10,000 readings", |b| {
+        b.iter(|| summarise(black_box(&sample), &FabricOptions::default()))
+    });
     c.bench_function("sets, 10,000 readings", |b| b.iter(|| sets(black_box(&sample), SetCount::Auto, 1)));
 }
 
