@@ -65,7 +65,8 @@ fn told(out: &InputReadings, code: &str) -> Option<String> {
 
 #[test]
 fn a_plain_table_is_read_and_every_guess_is_said() {
-    let out = read("station|easting|northing|type|strike|dip\nA1|1|2|Bedding|045|45\nA2|3|4|S0|225|30", &spec());
+    let out =
+        read("station|easting|northing|type|strike|dip\nA1|430001|2|Bedding|045|45\nA2|430003|4|S0|225|30", &spec());
     assert_eq!(angles(&out), [(45.0, 45.0), (225.0, 30.0)]);
     assert_eq!(out.notation, Notation::RightHand);
     assert_eq!(out.measurements.station_id.get(1), Some("A2"));
