@@ -302,7 +302,7 @@ fn shapes_beat_columns_and_the_users_crs_beats_the_sources() {
     table.crs = Some("EPSG:4326".into());
     table.shapes = Shapes::Points(vec![geo_types::Coord { x: 7.0, y: 91.0 }, geo_types::Coord { x: 7.0, y: 46.0 }]);
     let degrees = readings(&table, &StationSpec { crs: None, ..bedding(Notation::Auto) }).unwrap();
-    assert_eq!(codes(&degrees), [(2, "position-out-of-range")]);
+    assert_eq!(codes(&degrees), [(2, "position-swapped")]);
     // Both kinds of columns side by side: the CRS tells which pair is meant.
     let text = "easting|northing|lon|lat|strike|dip\n430000|5210000|15|47|45|45";
     assert_eq!(read(text, &bedding(Notation::Auto)).measurements.position[0].x, 430_000.0);

@@ -55,7 +55,7 @@ fn strikes(out: &InputReadings) -> Vec<f64> {
 fn two_hands_in_one_source_are_said() {
     let mixed = "x|y|strike|dip|dipdir\n5e5|5e6|45|20|315\n5e5|5e6|90|20|0\n5e5|5e6|200|20|110\n5e5|5e6|45|20|";
     let out = read(mixed, &bedding());
-    assert_eq!(strikes(&out), [225.0, 270.0, 20.0, 45.0]);
+    assert_eq!(strikes(&out), [225.0, 270.0, 20.0, 225.0]);
     assert_eq!(told(&out, "hands-mixed"), None, "all three are left-hand");
     let mixed = mixed.replace("200|20|110", "200|20|290");
     let out = read(&mixed, &bedding());
