@@ -65,7 +65,8 @@ fn told(out: &InputReadings, code: &str) -> Option<String> {
 
 #[test]
 fn a_plain_table_is_read_and_every_guess_is_said() {
-    let out = read("station|easting|northing|type|strike|dip\nA1|1|2|Bedding|045|45\nA2|3|4|S0|225|30", &spec());
+    let out =
+        read("station|easting|northing|type|strike|dip\nA1|430001|2|Bedding|045|45\nA2|430003|4|S0|225|30", &spec());
     assert_eq!(angles(&out), [(45.0, 45.0), (225.0, 30.0)]);
     assert_eq!(out.notation, Notation::RightHand);
     assert_eq!(out.measurements.station_id.get(1), Some("A2"));
@@ -301,7 +302,7 @@ fn shapes_beat_columns_and_the_users_crs_beats_the_sources() {
     table.crs = Some("EPSG:4326".into());
     table.shapes = Shapes::Points(vec![geo_types::Coord { x: 7.0, y: 91.0 }, geo_types::Coord { x: 7.0, y: 46.0 }]);
     let degrees = readings(&table, &StationSpec { crs: None, ..bedding(Notation::Auto) }).unwrap();
-    assert_eq!(codes(&degrees), [(2, "position-out-of-range")]);
+    assert_eq!(codes(&degrees), [(2, "position-swapped")]);
     // Both kinds of columns side by side: the CRS tells which pair is meant.
     let text = "easting|northing|lon|lat|strike|dip\n430000|5210000|15|47|45|45";
     assert_eq!(read(text, &bedding(Notation::Auto)).measurements.position[0].x, 430_000.0);

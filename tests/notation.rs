@@ -2,8 +2,8 @@
 //! trade, no source; the arithmetic (dip direction = strike + 90) is the right-hand rule itself.
 
 use homocline::orientation::notation::{
-    Notation, NotationError, Order, Printed, Reading, Wanted, attitude, azimuth_cell, dip_cell, point_cell, polarity,
-    written_as,
+    Notation, NotationError, Order, Printed, Reading, Wanted, agree, attitude, azimuth, azimuth_cell, dip_cell,
+    point_cell, polarity, shown, written_as,
 };
 use homocline::orientation::notation::{Quantity, rake_cell};
 use homocline::orientation::{Bearing, Dip, Measured, Polarity};
@@ -92,6 +92,33 @@ fn one_plane_in_many_hands() {
     assert_eq!(plane("N45E 45", Notation::RightHand), Ok((45.0, 45.0)));
 }
 
+/// A hint must not promise what would be refused as well.
+#[test]
+fn contradictions_say_what_would_help() {
+    let hint = |text: &str, notation| attitude(text, Wanted::Plane, notation, Order::Unknown).unwrap_err().hint();
+    let names_quadrant = |text: &str, notation| hint(text, notation).unwrap().contains("\"quadrant\"");
+    assert!(names_quadrant("045/45 NW", Notation::RightHand));
+    assert!(!names_quadrant("N45W 60NW", Notation::RightHand));
+    assert!(!names_quadrant("N45E 45NE", Notation::Auto));
+    let dip = Dip::new(40.0).unwrap();
+    let both = |notation, direction| agree(notation, 45.0, direction, dip).unwrap_err();
+    let plain = both(Notation::Quadrant, 60.0);
+    assert_eq!(plain.to_string(), "strike 45 and dip direction 60 contradict each other");
+    assert!(plain.hint().unwrap().contains("90 degrees apart"));
+    let wrong = both(Notation::RightHand, 315.0);
+    assert!(wrong.to_string().ends_with("(the strike read as right-hand)"), "{wrong}");
+    assert!(wrong.hint().unwrap().contains("left-hand"));
+}
+
+#[test]
+fn values_stand_in_messages_as_people_write_them() {
+    let of = |text: &str| dip_cell(Quantity::Dip, text).unwrap_err().to_string();
+    assert_eq!(of("weird thing, \"q\""), r#""weird thing, \"q\"" is not a dip in degrees"#);
+    let far = azimuth(Quantity::Strike, 1e300).unwrap_err().to_string();
+    assert!(far.starts_with("strike 1e300 is not an azimuth"), "{far}");
+    assert_eq!((shown(-0.0), shown(45.5), shown(0.0001)), ("0".into(), "45.5".into(), "0.0001".into()));
+}
+
 #[test]
 fn bearings_and_their_dips() {
     for (text, want) in [
@@ -103,6 +130,10 @@ fn bearings_and_their_dips() {
         ("E-W 20N", (270.0, 20.0)),
         ("W–E/20N", (270.0, 20.0)),
         ("N-S 35 W", (180.0, 35.0)),
+        ("EW 30N", (270.0, 30.0)),
+        ("we 20 S", (90.0, 20.0)),
+        ("NS 30E", (0.0, 30.0)),
+        ("SN/30W", (180.0, 30.0)),
         ("due N 35 E", (0.0, 35.0)),
         ("due N, 35 W", (180.0, 35.0)),
         ("N, 35 E", (0.0, 35.0)),

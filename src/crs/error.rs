@@ -9,7 +9,7 @@ pub enum CrsError {
     #[error("no coordinate reference system is given")]
     Missing,
     /// PROJ does not know what was given.
-    #[error("\"{definition}\" is not a coordinate reference system that PROJ knows: {reason}")]
+    #[error("{definition:?} is not a coordinate reference system that PROJ knows: {reason}")]
     Unknown {
         /// As the user wrote it, shortened.
         definition: String,
@@ -17,7 +17,7 @@ pub enum CrsError {
         reason: String,
     },
     /// A CRS, but none that a map can be drawn in.
-    #[error("\"{definition}\" is {what}, and a map needs a projected or geographic CRS")]
+    #[error("{definition:?} is {what}, and a map needs a projected or geographic CRS")]
     Unsuited {
         /// As the user wrote it, shortened.
         definition: String,
@@ -53,7 +53,7 @@ pub enum CrsError {
         value: f64,
     },
     /// A column that is needed and is not as long as the others.
-    #[error("there are {rows} readings but {values} {what}")]
+    #[error("for {rows} readings there are {values} {what}")]
     Lengths {
         /// What the column holds.
         what: &'static str,
@@ -64,8 +64,9 @@ pub enum CrsError {
     },
     /// Coordinates in the wrong order.
     #[error(
-        "{swapped} of {stations} positions lie outside the area of use ({area}), but would lie inside with x and y exchanged: \
+        "{swapped} of {stations} {} outside the area of use ({area}), but would be inside with x and y exchanged: \
          {x} and {y} (row {row}) look like {}",
+        if *.stations == 1 { "position lies" } else { "positions lie" },
         if *.geographic { "latitude, longitude" } else { "northing, easting" }
     )]
     Swapped {

@@ -5,6 +5,7 @@
 //! ppigrf 2.1.0 (generation 14) up to 2014 and within 0.012 degrees from 2015 to 2019, whose coefficients the later
 //! generation revised. The models themselves claim no better than about 0.3 degrees.
 
+use crate::orientation::notation::shown;
 use igrf::declination as igrf_field;
 use std::ops::Range;
 use world_magnetic_model::GeomagneticField;
@@ -19,7 +20,7 @@ const IGRF_YEARS: Range<f64> = 1900.0..2020.0;
 /// Years of the World Magnetic Models used here (WMM2020, then WMM2025).
 const WMM_YEARS: Range<f64> = 2020.0..2030.0;
 /// Years for which there is a model, as messages say it.
-pub(super) const MODEL_YEARS: &str = "1900 to 2029";
+pub const MODEL_YEARS: &str = "1900 to 2029";
 
 /// Horizontal field in nT below which a compass is not to be trusted (WMM2025 Technical Report, 1.8: caution zone).
 pub(super) const CAUTION_NT: f64 = 6000.0;
@@ -34,6 +35,25 @@ pub(super) struct Field {
     pub declination: f64,
     /// Strength of the horizontal part, nT.
     pub horizontal: f64,
+}
+
+/// True where a geomagnetic model covers a decimal year.
+pub fn has_model(year: f64) -> bool {
+    model_name(year).is_some()
+}
+
+/// A decimal year as a date, YYYY-MM-DD; as a number where it is no date.
+pub fn calendar(year: f64) -> String {
+    let whole = year.floor();
+    if !(1.0..=9999.0).contains(&whole) {
+        return shown(year);
+    }
+    let days = f64::from(days_in_year(whole as i32));
+    let elapsed = ((year - whole) * days).round().min(days - 1.0);
+    match Date::from_ordinal_date(whole as i32, elapsed as u16 + 1) {
+        Ok(date) => format!("{:04}-{:02}-{:02}", date.year(), u8::from(date.month()), date.day()),
+        Err(_) => shown(year),
+    }
 }
 
 /// Name of the model used for a decimal year; `None` outside all models.
@@ -146,6 +166,19 @@ mod tests {
             assert_eq!(field(10.0, f64::NAN, 0.0, year), None);
         }
         assert!(field(10.0, 50.0, 0.0, 1900.0).is_some() && field(10.0, 50.0, 0.0, 2029.9999).is_some());
+    }
+
+    #[test]
+    fn decimal_years_are_dates_again() {
+        for (year, date) in [
+            (2050.0, "2050-01-01"),
+            (2024.5, "2024-07-02"),
+            (1899.0 + 364.0 / 365.0, "1899-12-31"),
+            (2023.99999, "2023-12-31"),
+            (1e300, "1e300"),
+        ] {
+            assert_eq!(calendar(year), date);
+        }
     }
 
     #[test]

@@ -20,6 +20,7 @@ mod transform;
 pub use area::AreaOfUse;
 pub use definition::MapCrs;
 pub use error::CrsError;
+pub use magnetic::{MODEL_YEARS, calendar, has_model};
 pub use map_choice::default_map_crs;
 pub use north::LocalNorth;
 pub use orient::{Oriented, orient};

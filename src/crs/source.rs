@@ -2,10 +2,11 @@
 
 use super::definition::MapCrs;
 use super::error::CrsError;
-use super::magnetic::{MODEL_YEARS, field, model_name};
+use super::magnetic::{MODEL_YEARS, calendar, field, model_name};
 use super::north::LocalNorth;
 use super::transform::Transformer;
 use crate::notice::{Notice, Place};
+use crate::orientation::notation::shown;
 use crate::orientation::{Attitude, Bearing, GridAzimuth, MagneticAzimuth, TrueAzimuth};
 use crate::station::{Declination, Measurements, North};
 use geo_types::Coord;
@@ -239,6 +240,7 @@ impl<'a> Source<'a> {
 
     fn nowhere(&self, at: Coord<f64>) -> Refused {
         let (x, y) = (at.x, at.y);
+        let (as_x, as_y) = (shown(x), shown(y));
         let quarter = 90.0 / self.crs.base_unit_in_degrees();
         let hint = if self.crs.is_projected() {
             format!("check x, y and that the source's CRS is {}", self.crs.label())
@@ -249,8 +251,8 @@ impl<'a> Source<'a> {
         } else {
             "the place is too far from where this map projection works".to_owned()
         };
-        let reason = format!("x {x}, y {y} has no place in {}; {hint}", self.map.label());
-        Refused { code: NOT_PROJECTABLE, value: format!("{x}, {y}"), reason }
+        let reason = format!("x {as_x}, y {as_y} has no place in {}; {hint}", self.map.label());
+        Refused { code: NOT_PROJECTABLE, value: format!("{as_x}, {as_y}"), reason }
     }
 
     /// Whether each position lies outside the area of use of the source's own CRS.
@@ -314,7 +316,7 @@ fn declination_as_given(value: f64) -> Result<f64, Refused> {
     let (code, reason) = if value.is_nan() {
         ("no-declination", "the azimuth counts from magnetic north, but the row has no declination".to_owned())
     } else {
-        ("declination-out-of-range", format!("a declination of {value} degrees is not within -180 to 180"))
+        ("declination-out-of-range", format!("a declination of {} degrees is not within -180 to 180", shown(value)))
     };
     Err(Refused { code, value: if value.is_nan() { String::new() } else { value.to_string() }, reason })
 }
@@ -326,8 +328,9 @@ fn no_model(year: f64, place: Coord<f64>) -> Refused {
                       give a date column, or one date for the source";
         ("no-date", String::new(), reason.to_owned())
     } else if model_name(year).is_none() {
-        let reason = format!("no geomagnetic model covers the date {year:.2} (years {MODEL_YEARS}); check the date");
-        ("no-declination-model", format!("{year:.2}"), reason)
+        let date = calendar(year);
+        let reason = format!("no geomagnetic model covers the date {date} (years {MODEL_YEARS}); check the date");
+        ("no-declination-model", date, reason)
     } else {
         let reason = format!("the geomagnetic model has no declination at longitude {x:.6}, latitude {y:.6}");
         ("no-declination-model", format!("{x:.6}, {y:.6}"), reason)

@@ -37,6 +37,16 @@ impl Span {
     }
 }
 
+/// "1 reading", "2 readings".
+fn counted(n: usize, what: &str) -> String {
+    if n == 1 { format!("1 {what}") } else { format!("{n} {what}s") }
+}
+
+/// Two decimals, and no "-0.00".
+fn hundredths(degrees: f64) -> String {
+    format!("{:.2}", (degrees * 100.0).round() / 100.0 + 0.0)
+}
+
 /// Counts over the rows of one source, or of all.
 #[derive(Debug, Default)]
 pub(super) struct Tally {
@@ -94,7 +104,10 @@ impl Tally {
         if self.grid.n > 0 {
             let Span { n, low, high } = self.grid;
             let message = format!(
-                "{n} azimuths from grid north became true by adding the convergence of {crs}: {low:.2} to {high:.2} degrees"
+                "{} from grid north became true by adding the convergence of {crs}: {} to {} degrees",
+                counted(n, "azimuth"),
+                hundredths(low),
+                hundredths(high)
             );
             notices.push(Notice::info("convergence-added", file(), message));
         }
@@ -102,23 +115,26 @@ impl Tally {
             let Span { n, low, high } = self.model;
             let names = self.models.iter().copied().collect::<Vec<_>>().join(" and ");
             let message = format!(
-                "{n} azimuths from magnetic north became true by adding the declination of {names}: \
-                 {low:.2} to {high:.2} degrees"
+                "{} from magnetic north became true by adding the declination of {names}: {} to {} degrees",
+                counted(n, "azimuth"),
+                hundredths(low),
+                hundredths(high)
             );
             notices.push(Notice::info("declination-from-model", file(), message));
         }
         if let Some(first) = self.first_weak {
             let message = format!(
-                "at {} readings the horizontal magnetic field is below {CAUTION_NT} nT: a compass is not reliable there",
-                self.weak
+                "at {} the horizontal magnetic field is below {CAUTION_NT} nT: a compass is not reliable there",
+                counted(self.weak, "reading")
             );
             notices.push(Notice::warning("compass-unreliable", file().at_row(first), message));
         }
         if let (Some(first), Some(area)) = (self.first_outside, map.area_of_use()) {
             let message = format!(
-                "{} of {} readings lie outside the area of use of {} ({}), by up to {:.1} km",
+                "{} of {} {} outside the area of use of {} ({}), by up to {:.1} km",
                 self.outside.n,
-                source.position.len(),
+                counted(source.position.len(), "reading"),
+                if self.outside.n == 1 { "lies" } else { "lie" },
                 map.label(),
                 area,
                 self.outside.high
@@ -155,5 +171,19 @@ impl Tally {
             Notice::warning("map-not-conformal", Place::default(), message)
                 .hint("a conformal CRS (UTM, Lambert conformal) shows angles as they are")
         })
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn numbers_read_well() {
+        assert_eq!(
+            (hundredths(-0.001), hundredths(-0.005), hundredths(3.14159)),
+            ("0.00".into(), "-0.01".into(), "3.14".into())
+        );
+        assert_eq!((counted(1, "reading"), counted(0, "reading")), ("1 reading".into(), "0 readings".into()));
     }
 }

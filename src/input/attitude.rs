@@ -4,9 +4,9 @@ use super::choose::Columns;
 use super::row::RowFault;
 use super::value::{Value, value};
 use crate::orientation::notation::{
-    AzimuthCell, DipCell, Notation, NotationError, Order, Quantity, Reading, Wanted, agree, attitude, azimuth,
-    azimuth_cell, dip_cell, inclination, line, line_from_rake, plane, plunge_with_sense, point_cell, rake_cell,
-    written_as,
+    AzimuthCell, DipCell, Notation, NotationError, Order, Quantity, Reading, STRIKE_TOLERANCE, Wanted, agree, attitude,
+    azimuth, azimuth_cell, dip_cell, inclination, line, line_from_rake, plane, plunge_with_sense, point_cell,
+    rake_cell, shown, written_as,
 };
 use crate::orientation::{Measured, Polarity};
 use crate::table::Table;
@@ -23,6 +23,8 @@ pub(super) struct Evidence {
     pub declared: Notation,
     /// Which number comes first in texts, where rows that leave no doubt agree.
     pub order: Order,
+    /// The hand of a strike alone, where all rows with strike and dip direction agree on it.
+    pub hand: Option<Notation>,
 }
 
 #[derive(Debug, Clone, Copy, Default)]
@@ -33,6 +35,8 @@ struct Count {
     arrows: usize,
     azimuth_first: usize,
     inclination_first: usize,
+    right: usize,
+    left: usize,
 }
 
 /// Looks through the attitude columns once.
@@ -40,12 +44,12 @@ struct Count {
 /// Auto becomes: quadrant where a dip quadrant column holds anything, or more than half of the filled rows have compass
 /// letters beside their numbers; dip-direction where the only
 /// azimuth is a dip direction by name, or where more than half of the texts have an arrow; trend-plunge where only
-/// a trend is there; right-hand otherwise, which is said in a notice when a plane is read by it.
+/// a trend is there; the hand on which all rows with both a strike and a dip direction agree; right-hand otherwise, which is said in a notice when a plane is read by it.
 pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> Evidence {
     let texts = columns.attitude;
     let in_name = columns.strike.map(|(_, notation)| notation).unwrap_or(declared);
     let known = if declared == Notation::Auto { in_name } else { declared };
-    let mut out = Evidence { notation: known, assumed: false, declared, order: Order::Unknown };
+    let mut out = Evidence { notation: known, assumed: false, declared, order: Order::Unknown, hand: None };
     let needed = texts.is_some() || in_name == Notation::Auto && columns.strike.is_some();
     let count = if needed { count(table, columns) } else { Count::default() };
     out.order = match (count.azimuth_first, count.inclination_first) {
@@ -54,6 +58,11 @@ pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> 
         _ => Order::Unknown,
     };
     if known == Notation::Auto {
+        out.hand = match (count.right, count.left) {
+            (1.., 0) => Some(Notation::RightHand),
+            (0, 1..) => Some(Notation::LeftHand),
+            _ => None,
+        };
         out.notation = if count.quadrants > 0 || 2 * count.letters > count.rows {
             Notation::Quadrant
         } else if texts.is_some() && 2 * count.arrows > count.rows
@@ -63,8 +72,8 @@ pub(super) fn evidence(table: &Table, columns: &Columns, declared: Notation) -> 
         } else if texts.is_none() && columns.strike.is_none() && columns.trend.is_some() {
             Notation::TrendPlunge
         } else {
-            out.assumed = columns.dip_direction.is_none();
-            Notation::RightHand
+            out.assumed = out.hand.is_none();
+            out.hand.unwrap_or(Notation::RightHand)
         };
     }
     out
@@ -99,6 +108,11 @@ fn count(table: &Table, columns: &Columns) -> Count {
                     && filled(Some(strike), row)
                 {
                     c.rows += 1;
+                    match hand_shown(table, columns, row) {
+                        Some(Notation::LeftHand) => c.left += 1,
+                        Some(_) => c.right += 1,
+                        None => {}
+                    }
                     c.quadrants += usize::from(filled(columns.quadrant, row));
                     let (strike, dip) = (text(Some(strike), row), text(columns.dip, row));
                     c.letters += usize::from(
@@ -115,7 +129,29 @@ fn count(table: &Table, columns: &Columns) -> Count {
             arrows: a.arrows + b.arrows,
             azimuth_first: a.azimuth_first + b.azimuth_first,
             inclination_first: a.inclination_first + b.inclination_first,
+            right: a.right + b.right,
+            left: a.left + b.left,
         })
+}
+
+/// The hand of a strike, where the row's dip direction shows it.
+fn hand_shown(table: &Table, columns: &Columns, row: usize) -> Option<Notation> {
+    let cells = Cells { table, row };
+    let (strike, _, letters) = cells.azimuth(Quantity::Strike, columns.strike.map(|(i, _)| i)).ok()??;
+    let (direction, ..) = cells.azimuth(Quantity::DipDirection, columns.dip_direction).ok()??;
+    let dip = cells.dip(Quantity::Dip, columns.dip).ok()?;
+    let dip = inclination(Quantity::Dip, dip.degrees).ok()?;
+    hand(strike, direction, dip.degrees()).filter(|_| !letters)
+}
+
+/// The hand of a strike beside a dip direction; none where the plane is flat or upright, or they contradict.
+fn hand(strike: f64, direction: f64, dip: f64) -> Option<Notation> {
+    let off = (direction - strike).rem_euclid(360.0);
+    match dip > 0.0 && dip < 90.0 {
+        true if (off - 90.0).abs() <= STRIKE_TOLERANCE => Some(Notation::RightHand),
+        true if (off - 270.0).abs() <= STRIKE_TOLERANCE => Some(Notation::LeftHand),
+        _ => None,
+    }
 }
 
 fn azimuth_has_letters(text: Option<&str>) -> bool {
@@ -134,8 +170,25 @@ pub(super) struct Row {
     pub wrapped: Option<usize>,
     /// A plane was read as right-hand only because nothing says otherwise.
     pub assumed: bool,
+    /// What else is to be counted about the row.
+    pub also: Also,
+}
+
+/// What is worth a notice about a row that was read.
+#[derive(Debug, Clone, Copy, Default)]
+pub(super) struct Also {
     /// A plane's rake was left aside.
     pub rake_unused: bool,
+    /// The line was made from a rake.
+    pub raked: bool,
+    /// The row was read as a plane and its trend and plunge left aside.
+    pub line_unused: Option<usize>,
+    /// The row was read as a line and its strike or dip direction left aside.
+    pub plane_unused: Option<usize>,
+    /// The hand of the strike, where nobody said it and the row's dip direction shows it.
+    pub hand: Option<Notation>,
+    /// A strike alone was read by the hand that other rows show.
+    pub followed: bool,
 }
 
 type Fault = (Option<usize>, RowFault);
@@ -152,6 +205,9 @@ struct Cells<'a> {
 impl<'a> Cells<'a> {
     fn value(&self, column: Option<usize>) -> Value<'a> {
         column.map_or(Value::Blank, |i| value(&self.table.fields[i].column, self.row))
+    }
+    fn filled(&self, column: usize) -> bool {
+        self.value(Some(column)) != Value::Blank
     }
     /// An azimuth in [0, 360), whether it was wrapped, whether it was in letters; none for a blank.
     fn azimuth(&self, quantity: Quantity, column: Option<usize>) -> Result<Option<(f64, bool, bool)>, Fault> {
@@ -187,14 +243,21 @@ pub(super) fn of_row(
     let raked = cells.value(columns.rake) != Value::Blank;
     if wanted == Wanted::Plane {
         let mut out = of_plane(&cells, columns, evidence)?;
-        out.rake_unused = raked;
+        out.also.rake_unused = raked;
+        out.also.line_unused = columns.trend.filter(|&i| cells.filled(i));
         return Ok(out);
     }
     let own_trend = cells.value(columns.trend) != Value::Blank;
     if raked && !own_trend {
         return of_rake(&cells, columns, evidence);
     }
-    of_line(&cells, columns, wanted)
+    let mut out = of_line(&cells, columns, wanted)?;
+    if own_trend {
+        let strike = columns.strike.map(|(i, _)| i);
+        let mut others = [strike, columns.dip_direction].into_iter().flatten().filter(|&i| Some(i) != columns.trend);
+        out.also.plane_unused = others.find(|&i| cells.filled(i));
+    }
+    Ok(out)
 }
 
 fn text(cells: &Cells<'_>, column: usize, evidence: &Evidence, wanted: Wanted) -> Result<Row, Fault> {
@@ -202,7 +265,7 @@ fn text(cells: &Cells<'_>, column: usize, evidence: &Evidence, wanted: Wanted) -
         Value::Text(text) => text,
         Value::Blank => return Err((Some(column), RowFault::NoAttitude)),
         Value::Number(v) => {
-            return Err(at(Some(column))(NotationError::Unreadable(v.to_string())));
+            return Err(at(Some(column))(NotationError::Unreadable(shown(v))));
         }
     };
     // In auto each text speaks for itself first; what is left plain is read as the source shows.
@@ -214,7 +277,7 @@ fn text(cells: &Cells<'_>, column: usize, evidence: &Evidence, wanted: Wanted) -
         reading,
         wrapped: reading.wrapped.then_some(column),
         assumed: evidence.assumed && plain && wanted == Wanted::Plane,
-        rake_unused: false,
+        also: Also::default(),
     })
 }
 
@@ -236,7 +299,7 @@ fn of_plane(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result
             }
             (Some(side), columns.quadrant)
         }
-        (Value::Number(v), _) => return Err(at(columns.quadrant)(NotationError::CompassPoint(v.to_string()))),
+        (Value::Number(v), _) => return Err(at(columns.quadrant)(NotationError::CompassPoint(shown(v)))),
     };
     let strike = cells.azimuth(Quantity::Strike, strike_column)?;
     let direction = cells.azimuth(Quantity::DipDirection, columns.dip_direction)?;
@@ -247,8 +310,10 @@ fn of_plane(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result
         _ => None,
     };
     let mut assumed = false;
+    let mut also = Also::default();
     let (notation, azimuth, column) = match (strike, direction) {
-        (Some((s, _, _)), Some((d, _, _))) => {
+        (Some((s, _, letters)), Some((d, _, _))) => {
+            also.hand = hand(s, d, dip.degrees()).filter(|_| strike_notation == Notation::Auto && !letters);
             let right = agree(strike_notation, s, d, dip).map_err(at(columns.dip_direction))?;
             (Notation::RightHand, Some(right), strike_column)
         }
@@ -261,6 +326,7 @@ fn of_plane(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result
                 (true, false) => evidence.notation,
                 _ => strike_notation,
             };
+            also.followed = auto && evidence.hand == Some(notation) && dip.degrees() > 0.0;
             assumed = auto && evidence.assumed && notation == Notation::RightHand && dip.degrees() > 0.0;
             (notation, Some(s), strike_column)
         }
@@ -269,12 +335,7 @@ fn of_plane(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result
     let measured = plane(notation, azimuth, dip, side).map_err(|e| {
         at(if matches!(e, NotationError::QuadrantContradicts { .. }) { side_column } else { column })(e)
     })?;
-    Ok(Row {
-        reading: Reading { measured, wrapped: wrapped.is_some(), polarity: None },
-        wrapped,
-        assumed,
-        rake_unused: false,
-    })
+    Ok(Row { reading: Reading { measured, wrapped: wrapped.is_some(), polarity: None }, wrapped, assumed, also })
 }
 
 fn of_rake(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result<Row, Fault> {
@@ -284,6 +345,7 @@ fn of_rake(cells: &Cells<'_>, columns: &Columns, evidence: &Evidence) -> Result<
         Value::Text(text) => rake_cell(text).map_err(at(columns.rake))?,
         Value::Blank => return Err(at(columns.rake)(NotationError::Missing(Quantity::Rake))),
     };
+    out.also.raked = true;
     out.reading.measured = line_from_rake(out.reading.measured, rake.degrees, rake.side).map_err(at(columns.rake))?;
     Ok(out)
 }
@@ -314,7 +376,7 @@ fn of_line(cells: &Cells<'_>, columns: &Columns, wanted: Wanted) -> Result<Row, 
         reading: Reading { measured, wrapped: wrapped.is_some(), polarity },
         wrapped,
         assumed: false,
-        rake_unused: false,
+        also: Also::default(),
     })
 }
 

@@ -1,7 +1,8 @@
 //! Which column is what: as the user says, else by its name.
 
+use super::checks::{find, named_well, ragged};
 use super::names::{Meaning, PAIRS, half};
-use super::spec::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
+use super::spec::{DeclinationSpec, NorthReference, StationSpec, StructureSpec};
 use super::{InputFault, place};
 use crate::notice::{Notice, Place};
 use crate::orientation::notation::Notation;
@@ -78,19 +79,21 @@ pub(super) fn names(table: &Table) -> Vec<String> {
     table.fields.iter().map(|f| f.name.clone()).collect()
 }
 
+/// Columns that may be meant, by names that come near.
+fn near(table: &Table, meanings: &[Meaning]) -> Vec<String> {
+    let mut out = names(table);
+    out.retain(|name| meanings.iter().any(|m| m.near(name)));
+    out
+}
+
 impl Chooser<'_> {
     fn named(&mut self, key: &'static str, name: &str) -> Result<usize, InputFault> {
-        let Some(i) = self.table.position(name) else {
-            let columns = names(self.table);
-            let near = |c: &&String| strsim::jaro_winkler(&c.to_lowercase(), &name.to_lowercase());
-            let nearest = columns.iter().max_by(|a, b| near(a).total_cmp(&near(b))).filter(|c| near(c) > 0.8).cloned();
-            return Err(InputFault::NoSuchColumn { key, column: name.to_owned(), nearest, columns });
-        };
+        let i = find(self.table, key, name)?;
         self.used.push(UsedColumn { key, column: self.table.fields[i].name.clone(), guessed: false });
         Ok(i)
     }
 
-    fn note(&mut self, i: usize, key: &'static str, words: &str) {
+    fn note(&mut self, i: usize, key: &'static str, area_key: &str, words: &str) {
         let column = self.table.fields[i].name.clone();
         self.notices.push(
             Notice::info(
@@ -98,9 +101,13 @@ impl Chooser<'_> {
                 Place::file(&self.spec.file).in_column(&column),
                 format!("read as {words}, from its name"),
             )
-            .hint(format!("name another under [stations.columns], key {key}")),
+            .hint(format!("name another under [stations.columns], key {area_key}")),
         );
         self.used.push(UsedColumn { key, column, guessed: true });
+    }
+
+    fn told(&mut self, i: usize, meaning: Meaning) {
+        self.note(i, meaning.key(), meaning.area_key(), meaning.words());
     }
 
     /// The best column for a meaning, by name; not yet said. `first` takes the first of several equally good ones.
@@ -119,7 +126,8 @@ impl Chooser<'_> {
         let best: Vec<usize> = found.into_iter().filter(|(rank, _)| *rank == best).map(|(_, i)| i).collect();
         if best.len() > 1 && !first {
             let candidates = best.iter().map(|&i| self.table.fields[i].name.clone()).collect();
-            return Err(InputFault::Ambiguous { key: meaning.key(), candidates });
+            let (key, meaning) = (meaning.area_key(), meaning.words());
+            return Err(InputFault::Ambiguous { key, meaning, candidates });
         }
         Ok(best.first().copied())
     }
@@ -130,14 +138,19 @@ impl Chooser<'_> {
         }
         let found = self.guess(meaning, first)?;
         if let Some(i) = found {
-            self.note(i, meaning.key(), meaning.words());
+            self.told(i, meaning);
         }
         Ok(found)
     }
 
     fn position(&mut self) -> Result<Position, InputFault> {
         let keys = self.spec.columns.clone();
-        let missing = |table, keys| InputFault::NoColumn { what: "where a station is", keys, columns: names(table) };
+        let missing = |table, keys| InputFault::NoColumn {
+            what: "where a station is",
+            keys,
+            near: Vec::new(),
+            columns: names(table),
+        };
         if !matches!(self.table.shapes, Shapes::None) {
             return Ok(Position::Shapes { degrees: false });
         }
@@ -172,14 +185,14 @@ impl Chooser<'_> {
         match pairs[..] {
             [] => Err(missing(self.table, "x and y")),
             [(x, y, degrees)] => {
-                self.note(x, "x", if degrees { "longitude" } else { "easting" });
-                self.note(y, "y", if degrees { "latitude" } else { "northing" });
+                self.note(x, "x", "x", if degrees { "longitude" } else { "easting" });
+                self.note(y, "y", "y", if degrees { "latitude" } else { "northing" });
                 Ok(Position::Columns { x, y, degrees })
             }
             _ => {
                 let name = |i: usize| &self.table.fields[i].name;
                 let candidates = pairs.iter().map(|p| format!("{} / {}", name(p.0), name(p.1))).collect();
-                Err(InputFault::Ambiguous { key: "x and y", candidates })
+                Err(InputFault::Ambiguous { key: "x and y", meaning: "position", candidates })
             }
         }
     }
@@ -190,10 +203,13 @@ impl Chooser<'_> {
             Some(StructureSpec::Column(name)) => self.named("structure", name).map(StructureSource::Column),
             None => match self.guess(Meaning::Structure, false)? {
                 Some(i) => {
-                    self.note(i, "structure", "structure");
+                    self.told(i, Meaning::Structure);
                     Ok(StructureSource::Column(i))
                 }
-                None => Err(InputFault::NoStructure { columns: names(self.table) }),
+                None => Err(InputFault::NoStructure {
+                    near: near(self.table, &[Meaning::Structure]),
+                    columns: names(self.table),
+                }),
             },
         }
     }
@@ -246,18 +262,18 @@ fn attitude(chooser: &mut Chooser<'_>, out: &mut Columns) -> Result<(), InputFau
             out.trend = chooser.optional(Meaning::Trend, &None, false)?;
         }
         if let Some(i) = strike {
-            chooser.note(i, "strike", "strike");
+            chooser.told(i, Meaning::Strike);
             out.strike = Some((i, of_strike(declared)));
             out.strike_by_name = true;
         }
         if let Some(i) = dip_direction {
-            chooser.note(i, "dip_direction", "dip direction");
+            chooser.told(i, Meaning::DipDirection);
             out.dip_direction = Some(i);
         }
         if strike.is_none() && dip_direction.is_none() {
             let generic = chooser.guess(Meaning::Azimuth, false)?;
             if let Some(i) = generic.filter(|_| !(declared == Notation::TrendPlunge && out.trend.is_some())) {
-                chooser.note(i, "azimuth", "azimuth");
+                chooser.told(i, Meaning::Azimuth);
                 azimuth(chooser, out, i, false)?;
             }
         }
@@ -278,13 +294,19 @@ fn attitude(chooser: &mut Chooser<'_>, out: &mut Columns) -> Result<(), InputFau
         return Err(InputFault::NoColumn {
             what: "strike, dip direction or trend",
             keys: "azimuth (or attitude, where one text holds all)",
+            near: near(chooser.table, &[Meaning::Strike, Meaning::DipDirection, Meaning::Trend, Meaning::Azimuth]),
             columns: names(chooser.table),
         });
     }
     out.dip = chooser.optional(Meaning::Dip, &keys.dip, false)?;
     out.plunge = chooser.optional(Meaning::Plunge, &keys.plunge, false)?;
     if out.dip.is_none() && out.plunge.is_none() {
-        return Err(InputFault::NoColumn { what: "dip or plunge", keys: "dip", columns: names(chooser.table) });
+        return Err(InputFault::NoColumn {
+            what: "dip or plunge",
+            keys: "dip",
+            near: near(chooser.table, &[Meaning::Dip, Meaning::Plunge]),
+            columns: names(chooser.table),
+        });
     }
     out.quadrant = chooser.optional(Meaning::DipQuadrant, &keys.dip_quadrant, false)?;
     out.rake = chooser.optional(Meaning::Rake, &keys.rake, false)?;
@@ -312,7 +334,8 @@ fn azimuth(chooser: &mut Chooser<'_>, out: &mut Columns, i: usize, named: bool) 
     };
     if let Some(old) = taken.filter(|&old| old != i) {
         let candidates = vec![chooser.table.fields[old].name.clone(), name.clone()];
-        return Err(InputFault::Ambiguous { key: meaning.key(), candidates });
+        let (key, meaning) = (meaning.area_key(), meaning.words());
+        return Err(InputFault::Ambiguous { key, meaning, candidates });
     }
     let wrong = match meaning {
         Meaning::Strike => Meaning::DipDirection.rank(name).map(|_| "dip direction"),
@@ -325,7 +348,7 @@ fn azimuth(chooser: &mut Chooser<'_>, out: &mut Columns, i: usize, named: bool) 
                 "notation-and-name-differ",
                 Place::file(&chooser.spec.file).in_column(name),
                 format!(
-                    "column \"{name}\" was read as {}, as notation says, but by its name it is a {wrong}",
+                    "column {name:?} was read as {}, as notation says, but by its name it is a {wrong}",
                     meaning.words()
                 ),
             )
@@ -354,6 +377,7 @@ fn disagreement(
 pub(super) fn columns(table: &Table, spec: &StationSpec, notices: &mut Vec<Notice>) -> Result<Columns, InputFault> {
     ragged(table)?;
     let mut chooser = Chooser { table, spec, used: Vec::new(), notices };
+    named_well(table, spec)?;
     let position = chooser.position()?;
     let structure = chooser.structure()?;
     let mut out = Columns {
@@ -393,12 +417,6 @@ pub(super) fn columns(table: &Table, spec: &StationSpec, notices: &mut Vec<Notic
         }
         _ => {}
     }
-    // A name that is not needed here must still be right.
-    for (key, name) in named_keys(&spec.columns) {
-        if let Some(name) = name.as_deref().filter(|n| table.position(n).is_none()) {
-            chooser.named(key, name)?;
-        }
-    }
     if spec.north != Some(NorthReference::Magnetic)
         && (spec.declination.is_some() || spec.columns.declination.is_some())
     {
@@ -413,41 +431,4 @@ pub(super) fn columns(table: &Table, spec: &StationSpec, notices: &mut Vec<Notic
     }
     out.used = chooser.used;
     Ok(out)
-}
-
-fn named_keys(c: &ColumnSpec) -> [(&'static str, &Option<String>); 14] {
-    [
-        ("x", &c.x),
-        ("y", &c.y),
-        ("z", &c.z),
-        ("date", &c.date),
-        ("azimuth", &c.azimuth),
-        ("strike", &c.strike),
-        ("dip_direction", &c.dip_direction),
-        ("trend", &c.trend),
-        ("dip", &c.dip),
-        ("plunge", &c.plunge),
-        ("dip_quadrant", &c.dip_quadrant),
-        ("attitude", &c.attitude),
-        ("rake", &c.rake),
-        ("declination", &c.declination),
-    ]
-}
-
-/// Cells are read by row without further looks, so all columns must have all rows.
-fn ragged(table: &Table) -> Result<(), InputFault> {
-    let rows = table.len();
-    let shapes = match &table.shapes {
-        Shapes::None => rows,
-        Shapes::Points(p) => p.len(),
-        Shapes::Any(g) => g.len(),
-    };
-    let numbers = if table.rows.is_empty() { rows } else { table.rows.len() };
-    let lengths = table.fields.iter().map(|f| (f.name.as_str(), f.column.len()));
-    for (what, len) in lengths.chain([("shapes", shapes), ("row numbers", numbers)]) {
-        if len != rows || len > u32::MAX as usize {
-            return Err(InputFault::Ragged { rows, what: what.to_owned(), len });
-        }
-    }
-    Ok(())
 }

@@ -3,6 +3,7 @@
 use super::InputFault;
 use super::row::RowFault;
 use super::value::{Value, value};
+use crate::orientation::notation::shown;
 use crate::table::Table;
 
 /// Which part comes first in dates like 3/4/2024.
@@ -13,11 +14,24 @@ enum Slashes {
     Undecided,
 }
 
+/// When a reading was taken.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct When {
+    /// Decimal year.
+    pub year: f64,
+    /// Only the year was written; its middle was taken.
+    pub year_only: bool,
+}
+
+fn day(year: f64) -> When {
+    When { year, year_only: false }
+}
+
 /// The dates of a source.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Dates {
     column: Option<usize>,
-    common: Option<f64>,
+    common: Option<When>,
     slashes: Slashes,
 }
 
@@ -25,10 +39,7 @@ impl Dates {
     /// Looks through the column once: a part over 12 tells day from month, for all rows unless rows contradict.
     pub fn new(table: &Table, column: Option<usize>, common: Option<&str>) -> Result<Self, InputFault> {
         let common = match common {
-            Some(text) => {
-                let year = decimal_year(text, Slashes::Undecided).map_err(|_| InputFault::BadDate(text.to_owned()))?;
-                Some(year)
-            }
+            Some(text) => Some(date(text, Slashes::Undecided).map_err(|_| InputFault::BadDate(text.to_owned()))?),
             None => None,
         };
         if column.is_none() && common.is_none() {
@@ -55,27 +66,27 @@ impl Dates {
         Ok(Self { column, common, slashes })
     }
 
-    /// Decimal year of a row.
-    pub fn year(&self, table: &Table, row: usize) -> Result<f64, (Option<usize>, RowFault)> {
+    /// The date of a row.
+    pub fn of_row(&self, table: &Table, row: usize) -> Result<When, (Option<usize>, RowFault)> {
         let found = match self.column.map(|i| value(&table.fields[i].column, row)) {
             None | Some(Value::Blank) => self.common.ok_or(RowFault::NoDate),
-            Some(Value::Number(n)) => number_year(n).ok_or_else(|| RowFault::Date(n.to_string())),
-            Some(Value::Text(text)) => decimal_year(text, self.slashes),
+            Some(Value::Number(n)) => number_year(n).ok_or_else(|| RowFault::Date(shown(n))),
+            Some(Value::Text(text)) => date(text, self.slashes),
         };
         found.map_err(|fault| (self.column, fault))
     }
 }
 
-/// 20240601, or a decimal year.
-fn number_year(n: f64) -> Option<f64> {
+/// 20240601, a decimal year, or a year alone.
+fn number_year(n: f64) -> Option<When> {
     if (1900.0..2101.0).contains(&n) {
-        return Some(n);
+        return Some(if n.fract() == 0.0 { When { year: n + 0.5, year_only: true } } else { day(n) });
     }
     let whole = n as i64;
     if n.fract() != 0.0 || !(19_000_101..=21_001_231).contains(&whole) {
         return None;
     }
-    from_parts(whole / 10_000, whole / 100 % 100, whole % 100)
+    from_parts(whole / 10_000, whole / 100 % 100, whole % 100).map(day)
 }
 
 /// Three whole numbers with their number of digits, parted by one of `marks` (the same one twice).
@@ -95,10 +106,20 @@ fn parts(text: &str, marks: &[char]) -> Option<[(i64, usize); 3]> {
     pieces.next().is_none().then_some(out)
 }
 
-fn decimal_year(text: &str, slashes: Slashes) -> Result<f64, RowFault> {
+fn date(text: &str, slashes: Slashes) -> Result<When, RowFault> {
+    let trimmed = text.trim();
+    match trimmed.parse().ok().and_then(number_year) {
+        // "2024.0" counts from the year's first day; "2024" says no more than the year.
+        Some(when) if when.year_only && trimmed.contains('.') => Ok(day(when.year - 0.5)),
+        Some(when) => Ok(when),
+        None => day_in_parts(text, slashes).map(day),
+    }
+}
+
+fn day_in_parts(text: &str, slashes: Slashes) -> Result<f64, RowFault> {
     let bad = || RowFault::Date(text.to_owned());
-    if let Some(n) = text.trim().parse().ok().and_then(number_year) {
-        return Ok(n);
+    if let Some((y, m, d)) = with_month_name(text) {
+        return from_parts(y, m, d).ok_or_else(bad);
     }
     if let Some([(y, 4), (m, _), (d, _)]) = parts(text, &['-', '/', '.']) {
         return from_parts(y, m, d).ok_or_else(bad);
@@ -117,6 +138,57 @@ fn decimal_year(text: &str, slashes: Slashes) -> Result<f64, RowFault> {
         Slashes::Undecided => return Err(RowFault::DateOrder(text.to_owned())),
     };
     from_parts(y, m, d).ok_or_else(bad)
+}
+
+const MONTHS: [&str; 12] = [
+    "january",
+    "february",
+    "march",
+    "april",
+    "may",
+    "june",
+    "july",
+    "august",
+    "september",
+    "october",
+    "november",
+    "december",
+];
+
+/// "6 July 2023", "6-Jul-2023", "July 6, 2023": year, month and day. A time may follow.
+fn with_month_name(text: &str) -> Option<(i64, i64, i64)> {
+    let month = |word: &str| {
+        let word = word.to_ascii_lowercase();
+        let known = |m: &&str| **m == word || m[..3] == word || word == "sept" && m.starts_with("sept");
+        MONTHS.iter().position(|m| known(&m)).map(|i| i as i64 + 1)
+    };
+    let number = |word: &str, widths: std::ops::RangeInclusive<usize>| {
+        (widths.contains(&word.len()) && word.bytes().all(|b| b.is_ascii_digit())).then(|| word.parse().ok()).flatten()
+    };
+    let mut words = text.split([' ', '-', '/', '.', ',']).filter(|w| !w.is_empty());
+    let (a, b, c) = (words.next()?, words.next()?, words.next()?);
+    if words.next().is_some_and(|time| !time.contains(':')) {
+        return None;
+    }
+    let (d, m, y) = match (month(a), month(b)) {
+        (None, Some(m)) => (a, m, c),
+        (Some(m), None) => (b, m, c),
+        _ => return None,
+    };
+    Some((number(y, 4..=4)?, m, number(d, 1..=2)?))
+}
+
+/// How to write a date that was not understood.
+pub(super) fn advice(text: &str) -> &'static str {
+    let digits = |p: &&str| p.bytes().all(|b| b.is_ascii_digit());
+    let marks = [' ', '-', '/', '.', ',', '\''];
+    let pieces: Vec<&str> = text.split(marks).filter(|p| !p.is_empty() && !p.contains(':')).collect();
+    let short = pieces.iter().filter(|p| digits(p) && p.len() <= 2).count();
+    if pieces.len() == 3 && short >= 2 && !pieces.iter().any(|p| digits(p) && p.len() > 2) {
+        "write the year with four digits, as in 2024-06-01"
+    } else {
+        "write it as 2024-06-01"
+    }
 }
 
 /// The year and the part of it gone by at the start of the day.
@@ -149,6 +221,16 @@ mod tests {
             ("07/02/2024", Slashes::Undecided, None),
             ("1/1/2024", Slashes::Undecided, Some(2024.0)),
             ("20240702", Slashes::Undecided, Some(2024.5)),
+            ("2 July 2024", Slashes::Undecided, Some(2024.5)),
+            ("2-Jul-2024", Slashes::Undecided, Some(2024.5)),
+            ("July 2, 2024", Slashes::Undecided, Some(2024.5)),
+            ("02 JUL 2024 10:30", Slashes::Undecided, Some(2024.5)),
+            ("31 June 2024", Slashes::Undecided, None),
+            ("2 Juli 2024", Slashes::Undecided, None),
+            ("2 July 24", Slashes::Undecided, None),
+            ("02/07/24", Slashes::DayFirst, None),
+            ("2023", Slashes::Undecided, Some(2023.5)),
+            ("2024.0", Slashes::Undecided, Some(2024.0)),
             ("2024.5", Slashes::Undecided, Some(2024.5)),
             ("2023-02-29", Slashes::Undecided, None),
             ("2024-13-01", Slashes::Undecided, None),
@@ -156,7 +238,19 @@ mod tests {
             ("-", Slashes::Undecided, None),
             ("2024-07-02-03", Slashes::Undecided, None),
         ] {
-            assert_eq!(decimal_year(text, slashes).ok(), want, "{text}");
+            assert_eq!(date(text, slashes).ok().map(|when| when.year), want, "{text}");
+        }
+        assert!(date("2023", Slashes::Undecided).unwrap().year_only);
+        assert!(!date("2023-01-01", Slashes::Undecided).unwrap().year_only);
+        for (text, short) in [
+            ("02/07/24", true),
+            ("2 July 24", true),
+            ("2 Oct 24", true),
+            ("6.7.'23", true),
+            ("yesterday", false),
+            ("2024-13-01", false),
+        ] {
+            assert_eq!(advice(text).contains("four digits"), short, "{text}");
         }
     }
 }

@@ -1,5 +1,6 @@
 //! Why a table as a whole cannot be read.
 
+use crate::orientation::notation::shown;
 use thiserror::Error;
 
 /// Why a source of stations cannot be read.
@@ -23,7 +24,7 @@ impl InputError {
 #[derive(Debug, Clone, PartialEq, Error)]
 pub enum InputFault {
     /// A column the user named is not there.
-    #[error("there is no column \"{column}\" (key {key}); the columns are: {}", list(.columns))]
+    #[error("there is no column {column:?} (key {key}); the columns are: {}", list(.columns))]
     NoSuchColumn {
         /// Key under `[stations.columns]`.
         key: &'static str,
@@ -35,10 +36,12 @@ pub enum InputFault {
         columns: Vec<String>,
     },
     /// Two columns are equally good for one meaning.
-    #[error("{} are equally good for {key}", list(.candidates))]
+    #[error("{} are equally good for {meaning}", list(.candidates))]
     Ambiguous {
         /// Key under `[stations.columns]`.
         key: &'static str,
+        /// What is meant, in words.
+        meaning: &'static str,
         /// The columns, or pairs of columns.
         candidates: Vec<String>,
     },
@@ -49,17 +52,43 @@ pub enum InputFault {
         what: &'static str,
         /// Key or keys under `[stations.columns]`.
         keys: &'static str,
+        /// Columns whose names come near.
+        near: Vec<String>,
         /// The names there are.
         columns: Vec<String>,
     },
     /// Neither a structure column nor a fixed value.
     #[error("no column says which structure a row is; the columns are: {}", list(.columns))]
     NoStructure {
+        /// Columns whose names come near.
+        near: Vec<String>,
         /// The names there are.
         columns: Vec<String>,
     },
+    /// One column named for two meanings.
+    #[error("keys {first} and {second} both name column {column:?}")]
+    SameColumn {
+        /// Key under `[stations.columns]`.
+        first: &'static str,
+        /// The other key.
+        second: &'static str,
+        /// The column.
+        column: String,
+    },
+    /// Latitudes out of range that would be longitudes.
+    #[error("{swapped} of {rows} rows have longitude and latitude exchanged; row {row}: {reason}")]
+    Swapped {
+        /// Rows that fit only when exchanged.
+        swapped: usize,
+        /// All rows.
+        rows: usize,
+        /// The first such row.
+        row: u64,
+        /// Why it is refused.
+        reason: String,
+    },
     /// The notation and the name of the only azimuth column speak of different things.
-    #[error("notation = \"{notation}\", but the only azimuth column, \"{column}\", is by its name a {meaning}")]
+    #[error("notation = \"{notation}\", but the only azimuth column, {column:?}, is by its name a {meaning}")]
     NotationDisagrees {
         /// As declared.
         notation: &'static str,
@@ -78,16 +107,16 @@ pub enum InputFault {
     #[error("north = \"magnetic\", but nothing says the declination")]
     NoDeclination,
     /// A declination that cannot be.
-    #[error("declination {0} is not within -180 to 180 degrees")]
+    #[error("declination {} is not within -180 to 180 degrees", shown(*.0))]
     DeclinationRange(f64),
     /// The geomagnetic model needs dates.
     #[error("declination = \"model\" needs a date, and there is none")]
     NoDate,
     /// The date in the area file.
-    #[error("\"{0}\" is not a date")]
+    #[error("{0:?} is not a date")]
     BadDate(String),
     /// More structures than make sense.
-    #[error("column \"{column}\" holds more than {most} different structures")]
+    #[error("column {column:?} holds more than {most} different structures")]
     TooManyStructures {
         /// The column.
         column: String,
@@ -110,6 +139,10 @@ fn list(names: &[String]) -> String {
     if names.is_empty() { "none".to_owned() } else { names.join(", ") }
 }
 
+fn nearest(near: &[String]) -> String {
+    if near.is_empty() { String::new() } else { format!("; the nearest: {}", near.join(", ")) }
+}
+
 impl InputFault {
     /// A stable name in kebab-case.
     pub fn code(&self) -> &'static str {
@@ -118,6 +151,8 @@ impl InputFault {
             Self::Ambiguous { .. } => "column-ambiguous",
             Self::NoColumn { .. } => "column-missing",
             Self::NoStructure { .. } => "structure-column-missing",
+            Self::SameColumn { .. } => "column-named-twice",
+            Self::Swapped { .. } => "position-swapped",
             Self::NotationDisagrees { .. } => "notation-disagrees",
             Self::NoCrs { .. } => "crs-missing",
             Self::NoDeclination => "declination-missing",
@@ -131,13 +166,20 @@ impl InputFault {
     /// What the user can do about it.
     pub fn hint(&self) -> Option<String> {
         Some(match self {
-            Self::NoSuchColumn { nearest: Some(name), .. } => format!("did you mean \"{name}\"?"),
+            Self::NoSuchColumn { nearest: Some(name), .. } => format!("did you mean {name:?}?"),
             Self::NoSuchColumn { .. } | Self::Ragged { .. } => return None,
             Self::Ambiguous { key, .. } => format!("name one under [stations.columns], key {key}"),
-            Self::NoColumn { keys, .. } => format!("name it under [stations.columns], key {keys}"),
-            Self::NoStructure { .. } => {
-                "where all rows are one structure, write structure = { value = \"bedding\" } under [stations.columns]"
-                    .into()
+            Self::NoColumn { keys, near, .. } => {
+                format!("name it under [stations.columns], key {keys}{}", nearest(near))
+            }
+            Self::NoStructure { near, .. } => format!(
+                "where all rows are one structure, write structure = {{ value = \"bedding\" }} under \
+                 [stations.columns], else name the column there, key structure{}",
+                nearest(near)
+            ),
+            Self::SameColumn { .. } => "name a column of its own for each under [stations.columns]".into(),
+            Self::Swapped { .. } => {
+                "exchange the columns: x is the longitude, y the latitude; name them under [stations.columns]".into()
             }
             Self::NotationDisagrees { .. } => {
                 "set notation to what the column holds, or name the column under [stations.columns], key azimuth".into()
@@ -151,7 +193,7 @@ impl InputFault {
             }
             Self::DeclinationRange(_) => "degrees, east positive".into(),
             Self::NoDate => "say date = 2024-06-01 under [stations], or name a date column".into(),
-            Self::BadDate(_) => "write it as 2024-06-01".into(),
+            Self::BadDate(text) => super::dates::advice(text).into(),
             Self::TooManyStructures { .. } => "name the structure column under [stations.columns]".into(),
         })
     }

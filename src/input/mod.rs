@@ -4,22 +4,26 @@
 //! threads; what was guessed on the way stands in a notice.
 
 mod attitude;
+mod checks;
 mod choose;
 mod dates;
 mod duplicates;
 mod error;
 mod names;
 mod place;
+mod positions;
 mod row;
 mod rows;
 mod spec;
 mod structures;
+mod tallies;
 mod value;
 
 pub use choose::UsedColumn;
 pub use error::{InputError, InputFault};
 pub use spec::{ColumnSpec, DeclinationSpec, NorthReference, StationSpec, StructureSpec};
 
+use self::row::LOOKS_SWAPPED;
 use crate::notice::{Notice, Place, Refusal};
 use crate::orientation::notation::Notation;
 use crate::station::{Declination, Measurements, North};
@@ -64,8 +68,21 @@ pub fn readings(table: &Table, spec: &StationSpec) -> Result<InputReadings, Inpu
     let structures = structures::resolve(table, spec, &columns, &mut notices).map_err(fail)?;
     let job = rows::Job { table, spec, columns: &columns, north: &north, dates, evidence, structures: &structures };
     let (measurements, refusals) = rows::read(&job, crs, &mut notices);
+    swapped(&refusals, &measurements).map_err(fail)?;
+    positions::report(&measurements, &spec.file, &mut notices);
     duplicates::report(&measurements, &spec.file, &mut notices);
     Ok(InputReadings { measurements, refusals, notices, columns: columns.used, notation: evidence.notation })
+}
+
+/// An error where most rows have a latitude that can only be a longitude.
+fn swapped(refusals: &[Refusal], kept: &Measurements) -> Result<(), InputFault> {
+    let mut found = refusals.iter().filter(|r| r.code == LOOKS_SWAPPED);
+    let Some(first) = found.next() else { return Ok(()) };
+    let (swapped, rows) = (1 + found.count(), refusals.len() + kept.position.len());
+    if swapped * 2 <= rows {
+        return Ok(());
+    }
+    Err(InputFault::Swapped { swapped, rows, row: first.row, reason: first.reason.clone() })
 }
 
 fn north(spec: &StationSpec, columns: &choose::Columns, notices: &mut Vec<Notice>) -> Result<North, InputFault> {

@@ -23,6 +23,9 @@ pub(super) enum Meaning {
     Declination,
 }
 
+/// Likeness of two names that may be one misspelt.
+pub(super) const NEAR_ENOUGH: f64 = 0.85;
+
 impl Meaning {
     /// Key under `[stations.columns]`.
     pub fn key(self) -> &'static str {
@@ -43,6 +46,14 @@ impl Meaning {
             Self::Polarity => "polarity",
             Self::Weight => "weight",
             Self::Declination => "declination",
+        }
+    }
+    /// The key an area file has for it: azimuth and dip serve planes and lines alike.
+    pub fn area_key(self) -> &'static str {
+        match self {
+            Self::Strike | Self::DipDirection | Self::Trend => "azimuth",
+            Self::Plunge => "dip",
+            other => other.key(),
         }
     }
     /// In words.
@@ -71,7 +82,17 @@ impl Meaning {
                 &["datetime", "timestamp", "time"],
             ],
             Self::Structure => &[
-                &["structure", "structuretype", "structtype", "struct", "struktur", "estructura", "struttura"],
+                &[
+                    "structure",
+                    "structuretype",
+                    "structtype",
+                    "struct",
+                    "rockstruct",
+                    "rockstructure",
+                    "struktur",
+                    "estructura",
+                    "struttura",
+                ],
                 &["featuretype", "feattype", "feature"],
                 &["featurecode", "featcode"],
                 &["measurementtype", "meastype", "observationtype", "obstype", "planetype", "fabric", "gefuege"],
@@ -132,6 +153,7 @@ impl Meaning {
                     "mergulho",
                 ],
                 &["inclination", "incl", "inclinazione", "inclinaison"],
+                &["dp"],
             ],
             Self::Plunge => {
                 &[&["plunge", "plungeangle", "lineationplunge"], &["plg", "plng", "plongement", "abtauchen"]]
@@ -148,6 +170,14 @@ impl Meaning {
                 &[&["declination", "magneticdeclination", "magdeclination", "magdec", "magdecl"], &["decl"]]
             }
         }
+    }
+    /// True where a name is not one of the spellings, but close to one or holding one.
+    pub fn near(self, column: &str) -> bool {
+        let name = normal(column);
+        self.spellings()
+            .iter()
+            .flat_map(|group| group.iter())
+            .any(|s| s.len() >= 3 && name.contains(s) || s.len() >= 4 && strsim::jaro_winkler(&name, s) >= NEAR_ENOUGH)
     }
     /// Where the name of a column can mean this: how good it is, 0 the best.
     pub fn rank(self, column: &str) -> Option<usize> {
@@ -221,8 +251,15 @@ mod tests {
             ("ObsType", Meaning::Structure, Some(3)),
             ("Streichen", Meaning::Strike, Some(0)),
             ("Buzamiento", Meaning::Dip, Some(1)),
+            ("STATION_ID", Meaning::Id, Some(0)),
+            ("ROCK_STRUCT", Meaning::Structure, Some(0)),
+            ("STRUCT_TYPE", Meaning::Structure, Some(0)),
+            ("Strk", Meaning::Strike, Some(1)),
+            ("DIP_DIR", Meaning::DipDirection, Some(0)),
+            ("dp", Meaning::Dip, Some(3)),
         ] {
             assert_eq!(meaning.rank(column), rank, "{column}");
         }
+        assert!(Meaning::Dip.near("my_dip_1") && Meaning::Strike.near("strik") && !Meaning::Dip.near("colour"));
     }
 }

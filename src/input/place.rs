@@ -36,7 +36,7 @@ pub(super) fn crs(
             notices.push(Notice::warning(
                 "crs-overridden",
                 Place::file(&spec.file),
-                format!("crs = \"{said}\" was used, though the source itself says {short}"),
+                format!("crs = {said:?} was used, though the source itself says {short}"),
             ));
             Ok(said.to_owned())
         }
@@ -55,7 +55,7 @@ pub(super) fn position(table: &Table, columns: &Columns, row: usize) -> Result<C
     let whole = |fault| (None, fault);
     match (columns.position, &table.shapes) {
         (Position::Columns { x, y, degrees }, _) => {
-            let read = |column: usize, high: f64| {
+            let read = |column: usize, what: &'static str, high: f64| {
                 let fail = |fault| (Some(column), fault);
                 match number(value(&table.fields[column].column, row), table.decimal_comma) {
                     Ok(None) => Err(fail(RowFault::NoPosition)),
@@ -64,12 +64,16 @@ pub(super) fn position(table: &Table, columns: &Columns, row: usize) -> Result<C
                     Ok(Some(v)) if [-99.0, -999.0, -9999.0, -99999.0].contains(&v) && !degrees => {
                         Err(fail(RowFault::PositionCode(v)))
                     }
-                    Ok(Some(v)) if v.abs() > high => Err(fail(RowFault::PositionRange { value: v, high })),
+                    Ok(Some(v)) if v.abs() > high => Err(fail(RowFault::PositionRange { what, value: v, high })),
                     Ok(Some(v)) => Ok(v),
                 }
             };
-            let (high_x, high_y) = highest(degrees);
-            Ok(Coord { x: read(x, high_x)?, y: read(y, high_y)? })
+            let ([what_x, what_y], (high_x, high_y)) = (words(degrees), highest(degrees));
+            let at = Coord { x: read(x, what_x, high_x)?, y: read(y, what_y, if degrees { high_x } else { high_y })? };
+            if degrees && at.y.abs() > high_y {
+                return Err((Some(y), latitude(at)));
+            }
+            Ok(at)
         }
         (Position::Shapes { degrees }, Shapes::Points(points)) => point(points[row], degrees).map_err(whole),
         (Position::Shapes { degrees }, Shapes::Any(shapes)) => match &shapes[row] {
@@ -86,13 +90,28 @@ fn point(at: Coord<f64>, degrees: bool) -> Result<Coord<f64>, RowFault> {
     if at.x.is_nan() || at.y.is_nan() {
         return Err(RowFault::NoPosition);
     }
-    let (high_x, high_y) = highest(degrees);
-    for (value, high) in [(at.x, high_x), (at.y, high_y)] {
+    let ([what_x, what_y], (high_x, high_y)) = (words(degrees), highest(degrees));
+    if degrees && at.y.abs() > high_y {
+        return Err(latitude(at));
+    }
+    for (what, value, high) in [(what_x, at.x, high_x), (what_y, at.y, high_y)] {
         if value.abs() > high {
-            return Err(RowFault::PositionRange { value, high });
+            return Err(RowFault::PositionRange { what, value, high });
         }
     }
     Ok(at)
+}
+
+fn words(degrees: bool) -> [&'static str; 2] {
+    if degrees { ["longitude", "latitude"] } else { ["coordinate"; 2] }
+}
+
+/// A latitude out of range: an exchanged longitude, where the other would be a latitude.
+fn latitude(at: Coord<f64>) -> RowFault {
+    if at.x.abs() <= 90.0 && at.y.abs() <= 360.0 {
+        return RowFault::LooksSwapped(at.y);
+    }
+    RowFault::PositionRange { what: "latitude", value: at.y, high: 90.0 }
 }
 
 fn highest(degrees: bool) -> (f64, f64) {

@@ -2,13 +2,15 @@
 
 use super::attitude::{self, Evidence};
 use super::choose::Columns;
-use super::dates::Dates;
+use super::dates::{Dates, When};
 use super::place;
 use super::row::{HEAVIEST, RowFault};
 use super::spec::StationSpec;
 use super::structures::{Resolved, Structures};
+use super::tallies::{Tallies, Tally, report};
 use super::value::{NoNumber, Value, normal, number, value, written};
-use crate::notice::{Notice, Place, Refusal};
+use crate::crs::{calendar, has_model};
+use crate::notice::{Notice, Refusal};
 use crate::orientation::notation::{Wanted, polarity};
 use crate::orientation::{Measured, Polarity};
 use crate::station::{Declination, Measurements, North};
@@ -44,34 +46,6 @@ struct Accepted {
 }
 
 type Fault = (Option<usize>, RowFault);
-
-/// A count with the first example.
-#[derive(Debug, Default)]
-struct Tally {
-    count: usize,
-    first: Option<(usize, Option<usize>)>,
-}
-
-impl Tally {
-    fn add(&mut self, row: usize, column: Option<usize>) {
-        self.count += 1;
-        self.first.get_or_insert((row, column));
-    }
-    fn merge(&mut self, later: Self) {
-        self.count += later.count;
-        self.first = self.first.or(later.first);
-    }
-}
-
-#[derive(Debug, Default)]
-struct Tallies {
-    wrapped: Tally,
-    /// Wrapped ones that are more than just 360.
-    over: usize,
-    assumed: Tally,
-    rake_unused: Tally,
-    polarity: Tally,
-}
 
 #[derive(Default)]
 struct Piece {
@@ -129,11 +103,11 @@ impl Job<'_> {
         match choice {
             Some((index, wanted)) => Ok((index, wanted, resolved)),
             None => {
-                let name = match (&self.columns.structure, spelling) {
-                    (super::choose::StructureSource::Value(value), _) => value.clone(),
-                    (_, spelling) => spelling.to_owned(),
+                let name = match &self.columns.structure {
+                    super::choose::StructureSource::Value(value) => value.trim(),
+                    _ => spelling,
                 };
-                Err((column, RowFault::UnknownKind(name)))
+                Err((column, RowFault::UnknownKind(Box::new(self.structures.unknown(name)))))
             }
         }
     }
@@ -191,9 +165,16 @@ impl Job<'_> {
             },
             _ => 0.0,
         };
-        let year = match self.dates {
-            Some(dates) => dates.year(self.table, row)?,
-            None => 0.0,
+        let when = match self.dates {
+            Some(dates) => {
+                let when = dates.of_row(self.table, row)?;
+                // What has no azimuth needs no declination.
+                if found.reading.measured.bearing().is_some() && !has_model(when.year) {
+                    return Err((columns.date, RowFault::DateOutsideModels { date: calendar(when.year) }));
+                }
+                when
+            }
+            None => When { year: 0.0, year_only: false },
         };
         let elevation = match columns.z {
             None => 0.0,
@@ -216,9 +197,10 @@ impl Job<'_> {
         if found.assumed {
             tallies.assumed.add(row, None);
         }
-        if found.rake_unused {
-            tallies.rake_unused.add(row, columns.rake);
+        if when.year_only {
+            tallies.year_only.add(row, columns.date);
         }
+        tallies.also(row, &found.also, columns);
         let polarity = match (wanted, found.reading.polarity) {
             (Wanted::DirectedLine, Some(sense)) => sense,
             (_, told) => {
@@ -228,22 +210,23 @@ impl Job<'_> {
             }
         };
         let measured = found.reading.measured;
-        Ok(Accepted { position, elevation, structure, measured, polarity, weight, declination, year })
+        Ok(Accepted { position, elevation, structure, measured, polarity, weight, declination, year: when.year })
     }
 
-    fn source_row(&self, row: usize) -> u64 {
+    pub fn source_row(&self, row: usize) -> u64 {
         self.table.rows.get(row).copied().unwrap_or(row as u64 + 1)
     }
 
     fn refusal(&self, row: usize, (column, fault): Fault) -> Refusal {
         let field = column.map(|i| &self.table.fields[i]);
+        let value = field.and_then(|f| written(&f.column, row));
         Refusal {
             source: self.spec.file.clone(),
             row: self.source_row(row),
             column: field.map(|f| f.name.clone()),
-            value: field.and_then(|f| written(&f.column, row)),
             code: fault.code(),
-            reason: fault.reason(),
+            reason: fault.reason(field.map(|f| f.name.as_str()), value.as_deref()),
+            value,
         }
     }
 
@@ -313,11 +296,7 @@ pub(super) fn read(job: &Job<'_>, crs: String, notices: &mut Vec<Notice>) -> (Me
             }
         }
         refused.extend(piece.refused);
-        tallies.wrapped.merge(piece.tallies.wrapped);
-        tallies.assumed.merge(piece.tallies.assumed);
-        tallies.rake_unused.merge(piece.tallies.rake_unused);
-        tallies.polarity.merge(piece.tallies.polarity);
-        tallies.over += piece.tallies.over;
+        tallies.merge(piece.tallies);
     }
     report(job, &tallies, notices);
     (out, refused)
@@ -333,63 +312,4 @@ fn push_id(ids: &mut TextColumn, job: &Job<'_>, row: usize, text: &mut String) {
         Cell::Boolean(v) => write!(text, "{v}"),
     };
     ids.push(told.ok().map(|()| text.as_str()).filter(|t| !t.is_empty()));
-}
-
-fn report(job: &Job<'_>, tallies: &Tallies, notices: &mut Vec<Notice>) {
-    let place = |tally: &Tally| {
-        let mut place = Place::file(&job.spec.file);
-        if let Some((row, column)) = tally.first {
-            place = place.at_row(job.source_row(row));
-            if let Some(i) = column {
-                place = place.in_column(&job.table.fields[i].name);
-            }
-        }
-        place
-    };
-    let example = |tally: &Tally| match tally.first {
-        Some((row, Some(i))) => written(&job.table.fields[i].column, row).unwrap_or_default(),
-        _ => String::new(),
-    };
-    let rows = |n: usize| if n == 1 { "1 row".to_owned() } else { format!("{n} rows") };
-    let t = &tallies.wrapped;
-    if t.count > 0 {
-        let text = format!(
-            "{} had an azimuth from 360 to 720, which was taken back by one turn; the first is {}",
-            rows(t.count),
-            example(t)
-        );
-        let make = if tallies.over > 0 { Notice::warning } else { Notice::info };
-        notices.push(make("azimuth-wrapped", place(t), text));
-    }
-    let t = &tallies.assumed;
-    if t.count > 0 {
-        let mut at = Place::file(&job.spec.file);
-        if let Some(i) = job.columns.strike.map(|(i, _)| i).or(job.columns.attitude) {
-            at = at.in_column(&job.table.fields[i].name);
-        }
-        let text = format!(
-            "azimuths of planes were read as right-hand strike because nothing says otherwise ({})",
-            rows(t.count)
-        );
-        notices.push(
-            Notice::info("right-hand-assumed", at, text)
-                .hint("say notation = \"right-hand\", \"left-hand\", \"dip-direction\" or \"quadrant\""),
-        );
-    }
-    let t = &tallies.rake_unused;
-    if t.count > 0 {
-        let text = format!("{} of planes have a rake, which is a line's and was left aside", rows(t.count));
-        notices.push(
-            Notice::info("rake-unused", place(t), text).hint("give the line a row of its own, with a linear structure"),
-        );
-    }
-    let t = &tallies.polarity;
-    if t.count > 0 {
-        let text = format!(
-            "{} have a polarity that does not say upright or overturned, and were kept as unknown; the first is \"{}\"",
-            rows(t.count),
-            example(t)
-        );
-        notices.push(Notice::warning("polarity-unclear", place(t), text).hint("write upright, overturned or unknown"));
-    }
 }

@@ -2,6 +2,7 @@
 
 use super::InputFault;
 use super::choose::{Columns, StructureSource};
+use super::names::NEAR_ENOUGH;
 use super::spec::StationSpec;
 use super::value::{Value, normal, value, written};
 use crate::notice::{Notice, Place};
@@ -34,6 +35,8 @@ pub(super) struct Structures {
     column: Option<usize>,
     /// A column of code numbers, as text.
     codes: Option<Column>,
+    /// Why a spelling has no kind, and what to do about it.
+    unknown: HashMap<String, Unknown>,
 }
 
 impl Structures {
@@ -52,6 +55,10 @@ impl Structures {
     /// What a spelling stands for.
     pub fn get(&self, spelling: &str) -> Resolved {
         self.by_spelling.get(spelling).copied().unwrap_or_default()
+    }
+    /// Why a spelling has no kind, and what to do about it.
+    pub fn unknown(&self, spelling: &str) -> Unknown {
+        self.unknown.get(spelling).cloned().unwrap_or_default()
     }
     /// The column, for messages.
     pub fn column(&self) -> Option<usize> {
@@ -148,17 +155,20 @@ fn generation(text: &str) -> Option<Kind> {
     }
 }
 
+/// Where [structures] has this spelling: the key there, and the name it gives.
+fn mapped<'a>(spec: &'a StationSpec, spelling: &str) -> Option<(&'a String, &'a String)> {
+    let folded = || spec.structures.iter().find(|(k, _)| k.trim().to_lowercase() == spelling.to_lowercase());
+    spec.structures.get_key_value(spelling).or_else(folded)
+}
+
 /// A name and, where known, a kind; and whether that was a guess.
 fn meaning(spec: &StationSpec, spelling: &str) -> (String, Option<Kind>, bool) {
-    let mapped = spec.structures.get(spelling).or_else(|| {
-        spec.structures.iter().find(|(k, _)| k.trim().to_lowercase() == spelling.to_lowercase()).map(|(_, v)| v)
-    });
     let kind = |name: &str| {
         kind_of(name)
             .or_else(|| spec.kinds.get(name).copied())
             .or_else(|| spec.kinds.iter().find(|(k, _)| k.to_lowercase() == name.to_lowercase()).map(|(_, v)| *v))
     };
-    if let Some(target) = mapped {
+    if let Some((_, target)) = mapped(spec, spelling) {
         let name = own(target).map_or_else(|| target.trim().to_owned(), str::to_owned);
         let kind = kind(&name).or_else(|| generation(&name));
         return (name, kind, false);
@@ -232,8 +242,14 @@ pub(super) fn resolve(
     columns: &Columns,
     notices: &mut Vec<Notice>,
 ) -> Result<Structures, InputFault> {
-    let mut out =
-        Structures { list: Vec::new(), by_spelling: HashMap::new(), constant: None, column: None, codes: None };
+    let mut out = Structures {
+        list: Vec::new(),
+        by_spelling: HashMap::new(),
+        constant: None,
+        column: None,
+        codes: None,
+        unknown: HashMap::new(),
+    };
     let spellings = match &columns.structure {
         StructureSource::Value(value) => BTreeSet::from([value.trim().to_owned()]),
         StructureSource::Column(i) => {
@@ -286,45 +302,85 @@ pub(super) fn resolve(
         let overturned = columns.polarity.is_none() && overturned_in(spelling);
         let resolved =
             Resolved { planar: index(planar, Kind::Planar), linear: index(linear, Kind::Linear), overturned, directed };
-        notices.extend(told(spelling, name, *kind, *guessed, fallback, overturned, place()));
+        match kind {
+            Some(kind) => notices.extend(told(spelling, name, *kind, *guessed, overturned, place())),
+            None => {
+                let unknown = unknown(spec, spelling);
+                notices.extend(assumed(&unknown, fallback, place()));
+                out.unknown.insert(spelling.clone(), unknown);
+            }
+        }
         if out.column.is_some() {
             out.by_spelling.insert(spelling.clone(), resolved);
         } else {
             out.constant = Some(resolved);
         }
     }
+    if out.column.is_some() {
+        notices.extend(unmet(spec, meant.keys(), place()));
+    }
     Ok(out)
 }
 
-/// The notice of what was made of a spelling, where it was not plain.
-fn told(
-    spelling: &str,
-    name: &str,
-    kind: Option<Kind>,
-    guessed: bool,
-    fallback: Fallback,
-    overturned: bool,
-    place: Place,
-) -> Option<Notice> {
-    let hint = format!("say \"{spelling}\" = \"...\" under [structures] to change it");
-    let also = if overturned { ", overturned" } else { "" };
-    match (kind, fallback) {
-        (Some(_), _) if !guessed && !overturned => None,
-        (Some(kind), _) => {
-            let text = format!("\"{spelling}\" was read as {name} ({}){also}", kind.word());
-            Some(Notice::info("structure-guessed", place, text).hint(hint))
-        }
-        (None, Fallback::Unknown) => None,
-        (None, from) => {
-            let kind = match from {
-                Fallback::Planar => "planar",
-                Fallback::Linear => "linear",
-                _ => "planar or linear by the columns filled in each row",
-            };
-            let text = format!("\"{spelling}\" is no structure known here; it was kept under its own name as {kind}");
-            Some(Notice::warning("structure-kind-assumed", place, text).hint(hint))
-        }
-    }
+/// Entries of [structures] that no row has: perhaps misspelt, perhaps another source's.
+fn unmet<'a>(spec: &StationSpec, spellings: impl Iterator<Item = &'a String>, place: Place) -> Option<Notice> {
+    let met: BTreeSet<&String> = spellings.filter_map(|s| mapped(spec, s)).map(|(key, _)| key).collect();
+    let unmet: Vec<String> = spec.structures.keys().filter(|k| !met.contains(k)).map(|k| format!("{k:?}")).collect();
+    (!unmet.is_empty()).then(|| {
+        let text = format!("no row has what [structures] names: {}", unmet.join(", "));
+        Notice::info("structure-unmet", place, text)
+    })
+}
+
+/// A name whose kind nobody says.
+#[derive(Debug, Clone, PartialEq, Eq, Default)]
+pub(super) struct Unknown {
+    /// That it is unknown, in words.
+    pub what: String,
+    /// What the user can write.
+    pub advice: String,
+}
+
+fn unknown(spec: &StationSpec, spelling: &str) -> Unknown {
+    let told = mapped(spec, spelling).map(|(_, target)| target.as_str());
+    let name = told.unwrap_or(spelling);
+    let known = STRUCTURES.iter().map(|(name, _)| *name).chain(spec.kinds.keys().map(String::as_str));
+    let nearest = known
+        .map(|k| (strsim::jaro_winkler(&name.to_lowercase(), &k.to_lowercase()), k))
+        .filter(|(likeness, _)| *likeness >= NEAR_ENOUGH)
+        .max_by(|a, b| a.0.total_cmp(&b.0).then(b.1.cmp(a.1)));
+    let what = match told {
+        Some(_) => format!("{name:?} is no structure known here ([structures] says it for {spelling:?})"),
+        None => format!("{name:?} is no structure known here"),
+    };
+    let meant = nearest.map_or(String::new(), |(_, nearest)| format!("did you mean {nearest:?}? Else "));
+    let own = name.trim().to_lowercase().split_whitespace().collect::<Vec<_>>().join("_");
+    let advice = format!(
+        "{meant}write under [structures]: {spelling:?} = {{ name = {own:?}, kind = \"planar\" }} (or kind = \"linear\")"
+    );
+    Unknown { what, advice }
+}
+
+/// The notice of what was made of a known spelling, where it was not plain.
+fn told(spelling: &str, name: &str, kind: Kind, guessed: bool, overturned: bool, place: Place) -> Option<Notice> {
+    (guessed || overturned).then(|| {
+        let also = if overturned { ", overturned" } else { "" };
+        let text = format!("{spelling:?} was read as {name} ({}){also}", kind.word());
+        let hint = format!("say {spelling:?} = \"...\" under [structures] to change it");
+        Notice::info("structure-guessed", place, text).hint(hint)
+    })
+}
+
+/// The notice of an unknown name whose kind the columns told.
+fn assumed(unknown: &Unknown, from: Fallback, place: Place) -> Option<Notice> {
+    let kind = match from {
+        Fallback::Planar => "planar",
+        Fallback::Linear => "linear",
+        Fallback::ByRow => "planar or linear by the columns filled in each row",
+        Fallback::Unknown => return None,
+    };
+    let text = format!("{}; it was kept under its own name as {kind}", unknown.what);
+    Some(Notice::warning("structure-kind-assumed", place, text).hint(unknown.advice.as_str()))
 }
 
 #[cfg(test)]

@@ -1,5 +1,6 @@
 //! Cells as numbers and words.
 
+use crate::orientation::notation::shown;
 use crate::table::{Cell, Column};
 
 /// A cell with blanks and "no value" words taken out.
@@ -37,7 +38,7 @@ pub(super) fn written(column: &Column, row: usize) -> Option<String> {
     match column.cell(row) {
         Cell::Null => None,
         Cell::Text(text) => Some(text.to_owned()),
-        Cell::Real(v) => Some(v.to_string()),
+        Cell::Real(v) => Some(shown(v)),
         Cell::Integer(v) => Some(v.to_string()),
         Cell::Boolean(v) => Some(v.to_string()),
     }

@@ -1,5 +1,7 @@
 //! Why something written is not an attitude.
 
+use super::compass::{CompassPoint, between, compass_point};
+use super::{Notation, STRIKE_TOLERANCE, shown};
 use std::fmt;
 use thiserror::Error;
 
@@ -43,7 +45,7 @@ pub enum NotationError {
     #[error("there is no {0}")]
     Missing(Quantity),
     /// Text where a number belongs.
-    #[error("\"{text}\" is not a {quantity} in degrees")]
+    #[error("{text:?} is not a {quantity} in degrees")]
     NotANumber {
         /// Which number was wanted.
         quantity: Quantity,
@@ -57,7 +59,7 @@ pub enum NotationError {
         quantity: Quantity,
     },
     /// A number that databases use for "no value".
-    #[error("{value} is a code for a missing value, not a {quantity}")]
+    #[error("{} is a code for a missing value, not a {quantity}", shown(*.value))]
     MissingCode {
         /// Which number.
         quantity: Quantity,
@@ -65,7 +67,7 @@ pub enum NotationError {
         value: f64,
     },
     /// An azimuth below zero.
-    #[error("{quantity} {value} is negative; azimuths count clockwise from 0")]
+    #[error("{quantity} {} is negative; azimuths count clockwise from 0", shown(*.value))]
     NegativeAzimuth {
         /// Which number.
         quantity: Quantity,
@@ -73,7 +75,7 @@ pub enum NotationError {
         value: f64,
     },
     /// An azimuth of two turns or more.
-    #[error("{quantity} {value} is not an azimuth (0 to 360; up to 720 is taken back by one turn)")]
+    #[error("{quantity} {} is not an azimuth (0 to 360; up to 720 is taken back by one turn)", shown(*.value))]
     AzimuthRange {
         /// Which number.
         quantity: Quantity,
@@ -81,16 +83,16 @@ pub enum NotationError {
         value: f64,
     },
     /// A dip outside [0, 90].
-    #[error("dip {0} is outside 0 to 90 degrees")]
+    #[error("dip {} is outside 0 to 90 degrees", shown(*.0))]
     DipRange(f64),
     /// A plunge outside [0, 90].
-    #[error("plunge {0} is outside 0 to 90 degrees")]
+    #[error("plunge {} is outside 0 to 90 degrees", shown(*.0))]
     PlungeRange(f64),
     /// A plunge above the horizontal, of a line without a sense.
-    #[error("plunge {0} is negative")]
+    #[error("plunge {} is negative", shown(*.0))]
     NegativePlunge(f64),
     /// A rake outside its range.
-    #[error("rake {value} is outside 0 to {high} degrees")]
+    #[error("rake {} is outside 0 to {high} degrees", shown(*.value))]
     RakeRange {
         /// The number.
         value: f64,
@@ -98,10 +100,10 @@ pub enum NotationError {
         high: f64,
     },
     /// Compass letters that are not a bearing.
-    #[error("\"{0}\" is not a quadrant bearing")]
+    #[error("{0:?} is not a quadrant bearing")]
     QuadrantBearing(String),
     /// Letters that name no compass point.
-    #[error("\"{0}\" is not a compass point")]
+    #[error("{0:?} is not a compass point")]
     CompassPoint(String),
     /// A strike in quadrant notation that does not say which way the plane dips.
     #[error("strike {0} does not say to which side the plane dips")]
@@ -117,14 +119,14 @@ pub enum NotationError {
         point: &'static str,
     },
     /// Strike and dip direction are not a right angle apart.
-    #[error("strike {strike} and dip direction {dip_direction} contradict each other ({notation})")]
+    #[error("strike {strike} and dip direction {dip_direction} contradict each other{}", hand(.notation))]
     AzimuthsContradict {
         /// As read.
         strike: f64,
         /// As read.
         dip_direction: f64,
         /// How the strike was to be read.
-        notation: &'static str,
+        notation: Notation,
     },
     /// The rake's letters name no end of the strike line.
     #[error("rake end {point} lies on neither end of strike {strike}")]
@@ -135,17 +137,26 @@ pub enum NotationError {
         point: &'static str,
     },
     /// Two numbers of which either could be the trend.
-    #[error("\"{0}\" can be read as trend and plunge or as plunge and trend")]
+    #[error("{0:?} can be read as trend and plunge or as plunge and trend")]
     OrderAmbiguous(String),
     /// No notation known here.
-    #[error("\"{0}\" is not an attitude in any notation known here")]
+    #[error("{0:?} is not an attitude in any notation known here")]
     Unreadable(String),
     /// Trend and plunge given for a plane.
     #[error("a trend and a plunge do not say how a plane lies")]
     PlaneByTrend,
     /// A word that names no polarity, or more than one.
-    #[error("\"{0}\" does not say upright or overturned")]
+    #[error("{0:?} does not say upright or overturned")]
     Polarity(String),
+}
+
+/// Where a hand was declared, it is what the two contradict.
+fn hand(notation: &Notation) -> &'static str {
+    match notation {
+        Notation::RightHand => " (the strike read as right-hand)",
+        Notation::LeftHand => " (the strike read as left-hand)",
+        _ => "",
+    }
 }
 
 impl NotationError {
@@ -203,12 +214,22 @@ impl NotationError {
             Self::DipQuadrantMissing(_) => {
                 "add the dip quadrant (N45E 30SE), or declare notation = \"right-hand\"".into()
             }
-            Self::QuadrantContradicts { quantity: Quantity::Strike, .. } => {
-                "a plane dips at a right angle to its strike; with notation = \"quadrant\" the letters decide the side"
-                    .into()
+            Self::QuadrantContradicts { quantity: Quantity::Strike, azimuth, point } => {
+                let either = |p: CompassPoint| p.covers(azimuth + 90.0) || p.covers(azimuth - 90.0);
+                if compass_point(point).is_some_and(either) {
+                    "the letters name the other side; with notation = \"quadrant\" they decide it".into()
+                } else {
+                    "a plane dips at a right angle to its strike, and the letters name neither side of it".into()
+                }
             }
-            Self::AzimuthsContradict { .. } => {
-                format!("they should be 90 degrees apart, within {}", super::STRIKE_TOLERANCE)
+            Self::AzimuthsContradict { strike, dip_direction, notation } => {
+                let left = between(strike - 90.0, *dip_direction) <= STRIKE_TOLERANCE;
+                let right = between(strike + 90.0, *dip_direction) <= STRIKE_TOLERANCE;
+                match notation {
+                    Notation::RightHand if left => "they agree as a left-hand strike".into(),
+                    Notation::LeftHand if right => "they agree as a right-hand strike".into(),
+                    _ => format!("they should be 90 degrees apart, within {STRIKE_TOLERANCE}"),
+                }
             }
             Self::OrderAmbiguous(_) => "write the trend with three digits: 045/30".into(),
             Self::Unreadable(_) => "write for example 045/45, 045/45 SE, N45E 45SE, 225->30".into(),

@@ -22,7 +22,7 @@ pub use compass::{CompassPoint, compass_point};
 pub use error::{NotationError, Quantity};
 pub use plane::{STRIKE_TOLERANCE, agree, line_from_rake, plane};
 pub use polarity::{overturned_in, polarity};
-pub use print::Printed;
+pub use print::{Printed, shown};
 pub use text::{Order, Wanted, Written, attitude, written_as};
 
 use super::{Measured, Polarity};

@@ -80,7 +80,7 @@ pub fn agree(notation: Notation, strike: f64, dip_direction: f64, dip: Dip) -> R
         _ if left => Some(strike + 180.0),
         _ => None,
     };
-    ends.map(wrap_degrees).ok_or(NotationError::AzimuthsContradict { strike, dip_direction, notation: notation.word() })
+    ends.map(wrap_degrees).ok_or(NotationError::AzimuthsContradict { strike, dip_direction, notation })
 }
 
 /// The line at `rake` in a plane.

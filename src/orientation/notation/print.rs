@@ -83,3 +83,12 @@ impl fmt::Display for Printed {
         }
     }
 }
+
+/// A number for a message: as people write it, without the 300 digits of 1e300, and never "-0".
+pub fn shown(value: f64) -> String {
+    match value.abs() {
+        0.0 => "0".to_owned(),
+        size if size.is_finite() && !(1e-6..1e15).contains(&size) => format!("{value:e}"),
+        _ => value.to_string(),
+    }
+}

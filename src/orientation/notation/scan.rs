@@ -223,6 +223,19 @@ fn word(s: &[u8], i: usize, out: &mut Tokens) -> Option<usize> {
     if s.get(end) == Some(&b'.') && !s.get(end + 1).is_some_and(u8::is_ascii_digit) {
         end += 1;
     }
+    // "EW" is "E-W": both ends of one line.
+    if let Some(ends) = match letters {
+        "ew" => Some(["e", "w"]),
+        "we" => Some(["w", "e"]),
+        "ns" => Some(["n", "s"]),
+        "sn" => Some(["s", "n"]),
+        _ => None,
+    } {
+        out.push(Token::Point(compass_point(ends[0])?))?;
+        out.push(Token::Dash)?;
+        out.push(Token::Point(compass_point(ends[1])?))?;
+        return Some(end);
+    }
     let token = match letters {
         "due" => {
             let from = skip_blanks(s, end);
