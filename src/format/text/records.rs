@@ -265,7 +265,7 @@ impl Decimals {
                     "decimal-mark-mixed",
                     place,
                     format!(
-                        "{commas} numbers have a comma and {points} a point; the {} is taken for the decimal mark",
+                        "numbers with a comma: {commas}, with a point: {points}; angles are read with either, all others with the {}",
                         if self.comma() { "comma" } else { "point" }
                     ),
                 )
