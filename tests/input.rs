@@ -1,5 +1,8 @@
 //! Tables of stations to readings. Cases without a source beside them are common practice of the trade, no source.
 
+#[path = "common/tables.rs"]
+mod tables;
+
 use homocline::input::{
     ColumnSpec, DeclinationSpec, InputError, InputReadings, NorthReference, StationSpec, StructureSpec, readings,
 };
@@ -9,22 +12,10 @@ use homocline::orientation::{Measured, Polarity};
 use homocline::station::{Declination, Kind, North};
 use homocline::table::{Column, Shapes, Table, TextColumn};
 use proptest::prelude::*;
+use tables::bar_parted;
 
-/// A table of text columns from comma-parted lines, the first the header; rows count from line 2.
 fn csv(text: &str) -> Table {
-    let mut lines = text.lines().map(|l| l.split('|').map(str::trim).collect::<Vec<_>>());
-    let header = lines.next().unwrap();
-    let mut columns = vec![TextColumn::default(); header.len()];
-    let mut table = Table::new("stations.csv");
-    for (i, line) in lines.enumerate() {
-        assert_eq!(line.len(), header.len(), "{line:?}");
-        line.iter().zip(&mut columns).for_each(|(cell, column)| column.push(Some(cell)));
-        table.rows.push(i as u64 + 2);
-    }
-    for (name, column) in header.into_iter().zip(columns) {
-        table = table.with(name, "", "", Column::Text(column));
-    }
-    table
+    bar_parted("stations.csv", text)
 }
 
 fn spec() -> StationSpec {

@@ -1,29 +1,20 @@
 //! What is said about tables of stations that leave doubt. All data is invented; cases are common practice of the
 //! trade, no source.
 
+#[path = "common/tables.rs"]
+mod tables;
+
 use homocline::input::{ColumnSpec, DeclinationSpec, InputError, InputReadings, NorthReference, StationSpec};
 use homocline::input::{StructureSpec, readings};
 use homocline::notice::{Notice, Severity};
 use homocline::orientation::Measured;
 use homocline::orientation::notation::Notation;
 use homocline::station::Kind;
-use homocline::table::{Column, Table, TextColumn};
+use homocline::table::Table;
+use tables::bar_parted;
 
-/// A table of text columns from bar-parted lines, the first the header; rows count from line 2.
 fn table(text: &str) -> Table {
-    let mut lines = text.lines().map(|l| l.split('|').map(str::trim).collect::<Vec<_>>());
-    let header = lines.next().unwrap();
-    let mut columns = vec![TextColumn::default(); header.len()];
-    let mut table = Table::new("s.csv");
-    for (i, line) in lines.enumerate() {
-        assert_eq!(line.len(), header.len(), "{line:?}");
-        line.iter().zip(&mut columns).for_each(|(cell, column)| column.push(Some(cell)));
-        table.rows.push(i as u64 + 2);
-    }
-    for (name, column) in header.into_iter().zip(columns) {
-        table = table.with(name, "", "", Column::Text(column));
-    }
-    table
+    bar_parted("s.csv", text)
 }
 
 fn spec() -> StationSpec {

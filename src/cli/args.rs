@@ -55,10 +55,10 @@ pub struct RunArgs {
     /// Domain polygons: FILE, or FILE:LAYER
     #[arg(long, value_name = "FILE")]
     pub polygons: Option<String>,
-    /// Fault lines
+    /// Fault lines (kept for fault blocks and clusters, which this version cannot make yet)
     #[arg(long, value_name = "FILE")]
     pub faults: Option<String>,
-    /// Grow the domains from the readings (same as domains.method = "clusters")
+    /// Grow the domains from the readings (domains.method = "clusters"; this version cannot do that yet)
     #[arg(long)]
     pub clusters: bool,
     /// Output folder [default: output.folder of the area file, beside it; else "out"]

@@ -181,8 +181,8 @@ mod tests {
     #[test]
     fn numbers_read_well() {
         assert_eq!(
-            (hundredths(-0.001), hundredths(-0.005), hundredths(3.14159)),
-            ("0.00".into(), "-0.01".into(), "3.14".into())
+            (hundredths(-0.001), hundredths(-0.005), hundredths(2.34567)),
+            ("0.00".into(), "-0.01".into(), "2.35".into())
         );
         assert_eq!((counted(1, "reading"), counted(0, "reading")), ("1 reading".into(), "0 readings".into()));
     }

@@ -160,7 +160,7 @@ fn with_month_name(text: &str) -> Option<(i64, i64, i64)> {
     let month = |word: &str| {
         let word = word.to_ascii_lowercase();
         let known = |m: &&str| **m == word || m[..3] == word || word == "sept" && m.starts_with("sept");
-        MONTHS.iter().position(|m| known(m)).map(|i| i as i64 + 1)
+        MONTHS.iter().position(known).map(|i| i as i64 + 1)
     };
     let number = |word: &str, widths: std::ops::RangeInclusive<usize>| {
         (widths.contains(&word.len()) && word.bytes().all(|b| b.is_ascii_digit())).then(|| word.parse().ok()).flatten()
