@@ -10,7 +10,7 @@ use homocline::notice::Severity;
 use homocline::orientation::notation::Notation;
 use homocline::orientation::{Measured, Polarity};
 use homocline::station::{Declination, Kind, North};
-use homocline::table::{Column, Shapes, Table, TextColumn};
+use homocline::table::{Column, Shapes, Table};
 use proptest::prelude::*;
 use tables::bar_parted;
 
