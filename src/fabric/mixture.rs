@@ -11,8 +11,10 @@ use rayon::prelude::*;
 const TIGHTEST: f64 = 2000.0;
 /// A part wider than this (about 30 degrees of scatter) is background, not a set.
 const WIDEST: f64 = 2.0;
-/// Iterations to compare starts, iterations at most of the best, and the gain per reading that ends them.
+/// Iterations to compare starts, to compare numbers of parts, and at most of the mixture chosen; and the gain per
+/// reading that ends them.
 const TRIAL: usize = 12;
+const COMPARED: usize = 40;
 const MOST: usize = 200;
 const GAIN: f64 = 1e-5;
 /// Readings used at most to compare starts.
@@ -189,7 +191,12 @@ pub fn fit(data: &Data, parts: usize, seed: u64) -> Mixture {
     let few: Data = data.iter().step_by(stride).copied().collect();
     let tried: Vec<Mixture> = starts.into_par_iter().map(|s| iterate(&few, s, TRIAL)).collect();
     let best = tried.into_iter().reduce(|a, b| if b.log_likelihood > a.log_likelihood { b } else { a });
-    best.map_or_else(|| fit(data, 0, seed), |b| iterate(data, b, MOST))
+    best.map_or_else(|| fit(data, 0, seed), |b| iterate(data, b, COMPARED))
+}
+
+/// The mixture chosen, fitted to the end.
+pub fn finish(data: &Data, m: Mixture) -> Mixture {
+    iterate(data, m, MOST)
 }
 
 /// A few more steps of a fit on more of the data.

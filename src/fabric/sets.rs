@@ -104,7 +104,7 @@ pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
     let searched: Data = data.iter().step_by(stride).map(|&(v, w)| (v, w * stride as f64)).collect();
     let (chosen, groups) = match count {
         SetCount::Given(k) => {
-            let m = mixture::fit(&searched, k, seed);
+            let m = mixture::finish(&searched, mixture::fit(&searched, k, seed));
             let own = (0..m.parts.len()).collect();
             (m, own)
         }
@@ -133,6 +133,7 @@ pub fn sets(sample: &Sample, count: SetCount, seed: u64) -> Sets {
             if best.parts.len() < 2 || single <= best.bic(n) {
                 return Sets::none(sample.len(), "one maximum or girdle fits as well as several sets: no sets");
             }
+            let best = mixture::finish(&searched, best);
             let groups = joined(&best);
             (best, groups)
         }
