@@ -1,0 +1,138 @@
+//! Readings brought into one order and one frame, so that neither the order of rows, nor the origin of the map's
+//! coordinates, nor their unit can change what is grown from them.
+
+use super::{GrowError, Places};
+use geo::Coord;
+
+/// Steps along the longer side of the bounding box: fine enough to move nobody (0.01 mm in 12 km), coarse enough
+/// to round away what a shift of the origin leaves in the last digits. Products of two differences fit an i64.
+const STEPS: f64 = 1_073_741_824.0;
+
+/// One reading: its structure (renumbered from 0) and the products xx, yy, zz, xy, xz, yz of its axis.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Reading {
+    pub structure: usize,
+    pub products: [f64; 6],
+}
+
+/// The distinct positions, sorted by x then y, each with its readings, sorted by value.
+#[derive(Debug)]
+pub(super) struct Sites {
+    pub at: Vec<[i64; 2]>,
+    /// Readings of site i are `start[i]..start[i + 1]`.
+    pub start: Vec<usize>,
+    pub readings: Vec<Reading>,
+    /// The site of each reading.
+    pub site: Vec<u32>,
+    /// Row of the input that each reading came from.
+    pub row: Vec<u32>,
+    /// How many different structures there are.
+    pub structures: usize,
+    west: f64,
+    south: f64,
+    step: f64,
+}
+
+impl Sites {
+    pub(super) fn new(places: &Places) -> Result<Self, GrowError> {
+        let n = places.position.len();
+        if places.axis.len() != n || places.structure.len() != n {
+            return Err(GrowError::UnequalColumns {
+                positions: n,
+                axes: places.axis.len(),
+                structures: places.structure.len(),
+            });
+        }
+        if n == 0 {
+            return Err(GrowError::NoReadings);
+        }
+        if let Some(reading) = places.position.iter().position(|c| !(c.x.is_finite() && c.y.is_finite())) {
+            return Err(GrowError::PositionNotFinite { reading });
+        }
+        let low = |get: fn(&Coord<f64>) -> f64| places.position.iter().map(get).fold(f64::INFINITY, f64::min);
+        let high = |get: fn(&Coord<f64>) -> f64| places.position.iter().map(get).fold(f64::NEG_INFINITY, f64::max);
+        let (west, south) = (low(|c| c.x), low(|c| c.y));
+        let span = (high(|c| c.x) - west).max(high(|c| c.y) - south);
+        if !span.is_finite() {
+            return Err(GrowError::SpanNotFinite);
+        }
+        let step = if span > 0.0 { span / STEPS } else { 1.0 };
+        let mut used: Vec<u16> = places.structure.to_vec();
+        used.sort_unstable();
+        used.dedup();
+        let frame = Self {
+            at: Vec::new(),
+            start: Vec::new(),
+            readings: Vec::with_capacity(n),
+            site: Vec::with_capacity(n),
+            row: Vec::new(),
+            structures: used.len(),
+            west,
+            south,
+            step,
+        };
+        let snapped: Vec<[i64; 2]> = places
+            .position
+            .iter()
+            .map(|&c| {
+                let c = frame.place(c);
+                [c.x.round() as i64, c.y.round() as i64]
+            })
+            .collect();
+        Ok(frame.fill(places, &snapped, &used))
+    }
+
+    fn fill(mut self, places: &Places, snapped: &[[i64; 2]], used: &[u16]) -> Self {
+        let mut row: Vec<u32> = (0..snapped.len() as u32).collect();
+        row.sort_unstable_by(|&a, &b| {
+            let (a, b) = (a as usize, b as usize);
+            let (v, w) = (places.axis[a].vector(), places.axis[b].vector());
+            (snapped[a], places.structure[a])
+                .cmp(&(snapped[b], places.structure[b]))
+                .then_with(|| v.x.total_cmp(&w.x))
+                .then_with(|| v.y.total_cmp(&w.y))
+                .then_with(|| v.z.total_cmp(&w.z))
+        });
+        for &r in &row {
+            let r = r as usize;
+            if self.at.last() != Some(&snapped[r]) {
+                self.at.push(snapped[r]);
+                self.start.push(self.readings.len());
+            }
+            let v = places.axis[r].vector();
+            let structure = used.partition_point(|&s| s < places.structure[r]);
+            let products = [v.x * v.x, v.y * v.y, v.z * v.z, v.x * v.y, v.x * v.z, v.y * v.z];
+            self.readings.push(Reading { structure, products });
+            self.site.push(self.at.len() as u32 - 1);
+        }
+        self.start.push(self.readings.len());
+        self.row = row;
+        self
+    }
+
+    /// A map position in steps from the south-western corner, not rounded.
+    pub(super) fn place(&self, c: Coord<f64>) -> Coord<f64> {
+        Coord { x: (c.x - self.west) / self.step, y: (c.y - self.south) / self.step }
+    }
+
+    /// How many distinct positions there are.
+    pub(super) fn len(&self) -> usize {
+        self.at.len()
+    }
+
+    /// How many readings site `i` has.
+    pub(super) fn load(&self, i: usize) -> usize {
+        self.start[i + 1] - self.start[i]
+    }
+
+    /// A site's position as a coordinate.
+    pub(super) fn coord(&self, i: usize) -> Coord<f64> {
+        Coord { x: self.at[i][0] as f64, y: self.at[i][1] as f64 }
+    }
+
+    /// Distance of two sites, at least half a step.
+    pub(super) fn distance(&self, a: usize, b: usize) -> f64 {
+        let (a, b) = (self.coord(a), self.coord(b));
+        (a.x - b.x).hypot(a.y - b.y)
+    }
+}
