@@ -12,8 +12,16 @@ use std::sync::OnceLock;
 const NODES: [usize; 2] = [49, 33];
 /// A smallest eigenvalue below this counts as this: attitudes read to a degree scatter more.
 const LEAST: f64 = 1e-5;
-/// Nearer to uniform than this, f is 0.
+/// Where ln(t1/t3) at t1 = t2 is less, the axes count as uniform: f is below 1e-6.
 const UNIFORM: f64 = 1e-3;
+/// Five-point derivatives at each of five equidistant nodes, times 12 (Abramowitz & Stegun 1964, table 25.2).
+const DIFFERENCES: [[f64; 5]; 5] = [
+    [-25.0, 48.0, -36.0, 16.0, -3.0],
+    [-3.0, -10.0, 18.0, -6.0, 1.0],
+    [1.0, -8.0, 0.0, 8.0, -1.0],
+    [-1.0, 6.0, -18.0, 10.0, 3.0],
+    [3.0, -16.0, 36.0, -48.0, 25.0],
+];
 
 /// f + (ln t2 + ln t3)/2, which is smooth, with its derivatives by a, by b and by both.
 #[derive(Debug, Clone, Copy, Default)]
@@ -36,7 +44,7 @@ pub(super) struct Fitted {
 pub(super) struct Table(Vec<Node>);
 
 fn range() -> (f64, f64) {
-    (LEAST.ln(), ((1.0 - UNIFORM) / 3.0).ln())
+    (LEAST.ln(), -3f64.ln())
 }
 
 impl Table {
@@ -58,7 +66,8 @@ impl Table {
                 let room = ((1.0 - t3) / 2.0).ln() - a;
                 let t2 = (a + b * room).exp().min((1.0 - t3) / 2.0);
                 let slope = 1.0 - b / (1.0 - t3);
-                let Some(fit) = bingham::fit([1.0 - t2 - t3, t2, t3]) else { return Node::default() };
+                // Round-off must not leave t1 below t2 where they are equal.
+                let Some(fit) = bingham::fit([(1.0 - t2 - t3).max(t2), t2, t3]) else { return Node::default() };
                 let f = fit.k2 * t2 + fit.k3 * t3 - fit.log_constant;
                 Node {
                     value: f + 0.5 * (t2.ln() + a),
@@ -70,10 +79,11 @@ impl Table {
             .collect();
         let by_b: Vec<f64> = nodes.iter().map(|n| n.by_b).collect();
         for i in 0..rows {
-            let (before, after) = (i.saturating_sub(1), (i + 1).min(rows - 1));
+            let start = i.saturating_sub(2).min(rows - 5);
             for j in 0..columns {
-                let rise = by_b[after * columns + j] - by_b[before * columns + j];
-                nodes[i * columns + j].by_both = rise / ((after - before) as f64 * step);
+                let rise = |(k, weight): (usize, &f64)| weight * by_b[(start + k) * columns + j];
+                let sum: f64 = DIFFERENCES[i - start].iter().enumerate().map(rise).sum();
+                nodes[i * columns + j].by_both = sum / (12.0 * step);
             }
         }
         Self(nodes)
@@ -90,11 +100,11 @@ impl Table {
         let (low, high) = range();
         let t3 = t[2].max(LEAST);
         let a = t3.ln();
-        if a >= high {
-            return Fitted { f: 0.0, k2: 0.0, k3: 0.0 };
-        }
         let most = (1.0 - t3) / 2.0;
         let room = most.ln() - a;
+        if room < UNIFORM {
+            return Fitted { f: 0.0, k2: 0.0, k3: 0.0 };
+        }
         let t2 = t[1].clamp(t3, most);
         let b = ((t2 / t3).ln() / room).min(1.0);
         let (x, y) = ((a - low) / (high - low) * (rows - 1) as f64, b * (columns - 1) as f64);
