@@ -4,6 +4,7 @@ use super::barrier::Fence;
 use super::cells::{along_curve, cells};
 use super::dispersion;
 use super::graph::Graph;
+use super::path::{path, runner_up};
 use super::score::Table;
 use super::search::{Partition, Problem, Start, from_start};
 use super::sites::Sites;
@@ -94,9 +95,11 @@ pub fn grow(
     progress.end();
 
     progress.begin("stability", Some(options.replicates as u64));
-    let stable = stability(&problem, &found, &starts[best], options.replicates, options.seed);
+    let cut = starts[best].cut(&problem, &found);
+    let path = path(&problem, &found, &cut);
+    let stable = stability(&problem, &found, &cut, options.replicates, options.seed);
     progress.end();
-    Ok(report(&problem, found, stable, starts[best].links.len(), options, barriers))
+    Ok(report(&problem, found, stable, path, starts[best].links.len(), options, barriers))
 }
 
 /// Numbers the domains from north to south, then from west to east.
@@ -123,6 +126,7 @@ fn report(
     problem: &Problem,
     found: Partition,
     stable: Stability,
+    path: Vec<Step>,
     cells: usize,
     options: &GrowOptions,
     barriers: Barriers,
@@ -143,10 +147,6 @@ fn report(
         .iter()
         .map(|(&[a, b], &(share, pairs))| GrownBoundary { a, b, pairs, told_apart: tried.then_some(share) })
         .collect();
-    let least = found.way.iter().map(|s| s.energy).fold(f64::INFINITY, f64::min);
-    let path: Vec<Step> = found.way.iter().map(|s| Step { energy: s.energy - least, ..*s }).collect();
-    let runner_up =
-        path.iter().filter(|s| s.count != found.count).min_by(|a, b| a.energy.total_cmp(&b.energy)).copied();
     let (mut domain, mut outlier) = (vec![0; sites.row.len()], vec![0.0; sites.row.len()]);
     for ((&row, &site), &weight) in sites.row.iter().zip(&sites.site).zip(&found.weight) {
         domain[row as usize] = found.label[site as usize];
@@ -158,8 +158,8 @@ fn report(
         outlier,
         domains,
         boundaries,
+        runner_up: runner_up(&path, found.count),
         path,
-        runner_up,
         overdispersion: total / sites.readings.len() as f64,
         cells,
         smallest: problem.least,

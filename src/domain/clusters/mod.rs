@@ -11,6 +11,7 @@ mod dispersion;
 mod evidence;
 mod graph;
 mod grow;
+mod path;
 mod refine;
 mod score;
 mod search;
@@ -76,9 +77,10 @@ pub struct Grown {
     pub domains: Vec<GrownDomain>,
     /// Every pair of adjacent domains.
     pub boundaries: Vec<GrownBoundary>,
-    /// Energy against the number of domains along the merges of cells, number falling; 0 is the least of it.
+    /// Energy against the number of domains, number falling; 0 for the domains found. Below 0 where more domains
+    /// would describe the readings better, but some of them would be smaller than `smallest`.
     pub path: Vec<Step>,
-    /// The next best number along the path, and how much worse it is; `None` where there is no other.
+    /// The next best number along the path, and how much worse it is in nats; `None` where there is no other.
     pub runner_up: Option<Step>,
     /// Mean overdispersion: how many neighbouring readings say as much as one independent reading.
     pub overdispersion: f64,

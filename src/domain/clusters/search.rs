@@ -1,8 +1,8 @@
 //! The search for the partition of least energy, from several starts.
 
-use super::agglomerate::{BORDER, Links, Regions, Step, Until, links};
+use super::agglomerate::{BORDER, Links, Regions, Until, links};
 use super::evidence::{Moments, densities, gather, membership, own_logs, scored};
-use super::graph::Graph;
+use super::graph::{Graph, Sets};
 use super::refine::refine;
 use super::score::Table;
 use super::sites::Sites;
@@ -40,6 +40,23 @@ impl Start {
         let links = links(graph, &cell, count);
         Self { cell, links }
     }
+
+    /// These cells cut along the boundaries of a partition.
+    pub(super) fn cut(&self, problem: &Problem, found: &Partition) -> Self {
+        let mut sets = Sets::new(self.cell.len());
+        for &[a, b] in problem.graph.strong.iter().chain(&problem.graph.weak) {
+            let (i, j) = (a as usize, b as usize);
+            if found.label[i] == found.label[j] && self.cell[i] == self.cell[j] {
+                sets.unite(a, b);
+            }
+        }
+        let (piece, count) = sets.labels();
+        Self::new(problem.graph, piece, count)
+    }
+
+    pub(super) fn moments(&self, problem: &Problem, weight: &[f64], phi: &[f64]) -> Vec<Moments> {
+        gather(problem.sites, &self.cell, self.links.len(), weight, phi)
+    }
 }
 
 /// A label per site, a weight per reading.
@@ -48,8 +65,6 @@ pub(super) struct Partition {
     pub label: Vec<u32>,
     pub count: usize,
     pub weight: Vec<f64>,
-    /// The way that the cells merged.
-    pub way: Vec<Step>,
 }
 
 impl Partition {
@@ -96,13 +111,13 @@ pub(super) fn merged(problem: &Problem, start: &Start) -> Partition {
     let mut weight = vec![1.0; problem.sites.readings.len()];
     let mut pass = 0;
     loop {
-        let moments = gather(problem.sites, &start.cell, start.links.len(), &weight, problem.phi);
+        let moments = start.moments(problem, &weight, problem.phi);
         let terms = scored(&moments, problem.table);
         let regions =
             Regions::new(problem.table, problem.sites.structures, terms, start.links.clone(), problem.address);
-        let (merged, count, way) = regions.agglomerate(until);
+        let (merged, count, _) = regions.agglomerate(until);
         let label = start.cell.iter().map(|&c| merged[c as usize]).collect();
-        let mut partition = Partition { label, count, weight, way };
+        let mut partition = Partition { label, count, weight };
         pass += 1;
         if pass == PASSES {
             return partition;

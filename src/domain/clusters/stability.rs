@@ -1,8 +1,7 @@
 //! How far the domains would come out the same from other readings of the same ground.
 
 use super::agglomerate::{Regions, Until};
-use super::evidence::{gather, scored};
-use super::graph::Sets;
+use super::evidence::scored;
 use super::search::{Partition, Problem, Start};
 use rand::{RngExt, SeedableRng};
 use rand_chacha::ChaCha8Rng;
@@ -24,25 +23,15 @@ pub(super) struct Stability {
     pub counts: Vec<usize>,
 }
 
-/// Merges the cells again under exponential weights of the readings (the Bayesian bootstrap, Rubin 1981).
-/// Cells are cut along the boundaries found, so that none straddles one.
+/// Merges cells again under exponential weights of the readings (the Bayesian bootstrap, Rubin 1981). The cells
+/// are `cut` along the boundaries found, so that none straddles one.
 pub(super) fn stability(
     problem: &Problem,
     found: &Partition,
-    start: &Start,
+    cut: &Start,
     replicates: usize,
     seed: u64,
 ) -> Stability {
-    let sites = problem.sites;
-    let mut sets = Sets::new(sites.len());
-    for &[a, b] in problem.graph.strong.iter().chain(&problem.graph.weak) {
-        let (a_, b_) = (a as usize, b as usize);
-        if found.label[a_] == found.label[b_] && start.cell[a_] == start.cell[b_] {
-            sets.unite(a, b);
-        }
-    }
-    let (piece, count) = sets.labels();
-    let cut = Start::new(problem.graph, piece, count);
     let until = problem.wanted.map_or(Until::Least, Until::Count);
     let phi: Vec<f64> = problem.phi.iter().map(|p| p * NOISE).collect();
     let drawn: Vec<(Vec<f64>, Vec<u32>, usize)> = (0..replicates)
@@ -51,8 +40,9 @@ pub(super) fn stability(
             let mut rng = ChaCha8Rng::seed_from_u64(seed);
             rng.set_stream(STREAM + replicate as u64);
             let weight: Vec<f64> = found.weight.iter().map(|w| -w * (1.0 - rng.random::<f64>()).ln()).collect();
-            let terms = scored(&gather(sites, &cut.cell, count, &weight, &phi), problem.table);
-            let regions = Regions::new(problem.table, sites.structures, terms, cut.links.clone(), problem.address);
+            let terms = scored(&cut.moments(problem, &weight, &phi), problem.table);
+            let regions =
+                Regions::new(problem.table, problem.sites.structures, terms, cut.links.clone(), problem.address);
             let (merged, groups, _) = regions.agglomerate(until);
             let (best, most) = overlaps(problem, found, &cut.cell, &merged, groups);
             (best, most, groups)
