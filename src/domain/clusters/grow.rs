@@ -73,7 +73,6 @@ pub fn grow(
         table,
         curve: &curve,
         phi: &phi,
-        sweep_phi: &phi,
         address: 0.5 * (n as f64 / size).max(1.0).ln(),
         least: smallest,
         wanted,

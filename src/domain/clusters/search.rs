@@ -19,8 +19,6 @@ pub(super) struct Problem<'a> {
     pub curve: &'a [u32],
     /// Overdispersion per site.
     pub phi: &'a [f64],
-    /// Overdispersion per site as the sweep of single sites sees it.
-    pub sweep_phi: &'a [f64],
     /// Price of one more domain.
     pub address: f64,
     /// Fewest readings in a domain.

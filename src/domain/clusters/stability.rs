@@ -25,13 +25,7 @@ pub(super) struct Stability {
 
 /// Merges cells again under exponential weights of the readings (the Bayesian bootstrap, Rubin 1981). The cells
 /// are `cut` along the boundaries found, so that none straddles one.
-pub(super) fn stability(
-    problem: &Problem,
-    found: &Partition,
-    cut: &Start,
-    replicates: usize,
-    seed: u64,
-) -> Stability {
+pub(super) fn stability(problem: &Problem, found: &Partition, cut: &Start, replicates: usize, seed: u64) -> Stability {
     let until = problem.wanted.map_or(Until::Least, Until::Count);
     let phi: Vec<f64> = problem.phi.iter().map(|p| p * NOISE).collect();
     let drawn: Vec<(Vec<f64>, Vec<u32>, usize)> = (0..replicates)
