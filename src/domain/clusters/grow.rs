@@ -6,7 +6,7 @@ use super::dispersion;
 use super::graph::Graph;
 use super::path::{path, runner_up};
 use super::score::Table;
-use super::search::{Partition, Problem, Start, from_start};
+use super::search::{Partition, Problem, Start, from_start, overlay};
 use super::sites::Sites;
 use super::stability::{Stability, stability};
 use super::{Barriers, Count, GrowError, GrowOptions, Grown, GrownBoundary, GrownDomain, Places, Step};
@@ -46,7 +46,7 @@ pub fn grow(
     let fair = wanted.map_or(usize::MAX, |count| n / (2 * count));
     let smallest = options.smallest.max((n + SHARE / 2) / SHARE).min(fair).max(1);
     let (fence, used) = Fence::new(barriers, &sites)?;
-    let graph = Graph::new(&sites, &fence, options.smallest.min(smallest));
+    let graph = Graph::new(&sites, &fence, smallest);
     let barriers = Barriers { joined_across: graph.joined, ..used };
     let curve = along_curve(&sites);
     progress.end();
@@ -77,28 +77,29 @@ pub fn grow(
         least: smallest,
         wanted,
     };
-    let tried: Vec<(f64, Partition)> = starts
-        .par_iter()
-        .map(|start| {
-            let partition = from_start(&problem, start);
-            (partition.energy(&problem), partition)
-        })
-        .collect();
-    let mut best = 0;
-    for i in 1..tried.len() {
-        if tried[i].0 < tried[best].0 - 1e-9 {
-            best = i;
-        }
-    }
-    let found = number(&sites, tried.into_iter().nth(best).expect("there is a start").1);
+    let found = number(&sites, search(&problem, &starts));
     progress.end();
 
     progress.begin("stability", Some(options.replicates as u64));
-    let cut = starts[best].cut(&problem, &found);
+    let cut = starts[0].cut(&problem, &found);
     let path = path(&problem, &found, &cut);
     let stable = stability(&problem, &found, &cut, options.replicates, options.seed);
     progress.end();
-    Ok(report(&problem, found, stable, path, starts[best].links.len(), options, barriers))
+    Ok(report(&problem, found, stable, path, starts[0].links.len(), options, barriers))
+}
+
+/// The partition of least energy from all starts, or from what their partitions agree upon; ties go to the first.
+fn search(problem: &Problem, starts: &[Start]) -> Partition {
+    let from = |start: &Start| {
+        let partition = from_start(problem, start);
+        (partition.energy(problem), partition)
+    };
+    let mut tried: Vec<(f64, Partition)> = starts.par_iter().map(from).collect();
+    if tried.len() > 1 {
+        tried.push(from(&overlay(problem, &tried)));
+    }
+    let least = tried.into_iter().reduce(|best, next| if next.0 < best.0 - 1e-9 { next } else { best });
+    least.expect("there is a start").1
 }
 
 /// Numbers the domains from north to south, then from west to east.

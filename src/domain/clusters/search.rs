@@ -1,7 +1,7 @@
 //! The search for the partition of least energy, from several starts.
 
 use super::agglomerate::{BORDER, Links, Regions, Until, links};
-use super::evidence::{Moments, densities, gather, membership, own_logs, scored};
+use super::evidence::{Moments, densities, gather, membership, own_logs, parameter_price, scored};
 use super::graph::{Graph, Sets};
 use super::refine::refine;
 use super::score::Table;
@@ -9,6 +9,9 @@ use super::sites::Sites;
 
 /// Passes of merging and weighing readings.
 const PASSES: usize = 3;
+
+/// Parameters of a domain's fabric in the energy of a whole partition, between Watson's 3 and Bingham's 5.
+const PARAMETERS: f64 = 4.0;
 
 /// All that a search needs to know.
 pub(super) struct Problem<'a> {
@@ -91,7 +94,8 @@ impl Partition {
             let c = &mut count[self.label[site as usize] as usize * sites.structures + reading.structure];
             *c = [c[0] + 1.0, c[1] + problem.phi[site as usize]];
         }
-        let parameters: f64 = count.iter().filter(|c| c[0] > 0.0).map(|c| 2.0 * (c[0] * c[0] / c[1]).ln_1p()).sum();
+        let parameters: f64 =
+            count.iter().filter(|c| c[0] > 0.0).map(|c| PARAMETERS * parameter_price(c[0] * c[0] / c[1])).sum();
         let border =
             problem.graph.strong.iter().filter(|&&[a, b]| self.label[a as usize] != self.label[b as usize]).count();
         parameters - likelihood + problem.address * self.count as f64 + BORDER * border as f64
@@ -101,6 +105,19 @@ impl Partition {
 /// Merges the cells of one start, weighs the readings, and refines the outcome.
 pub(super) fn from_start(problem: &Problem, start: &Start) -> Partition {
     refine(problem, merged(problem, start))
+}
+
+/// Partitions laid over each other: their pieces are what all agree upon, and a start of their own, which can
+/// take each boundary from the partition that drew it best.
+pub(super) fn overlay(problem: &Problem, partitions: &[(f64, Partition)]) -> Start {
+    let mut sets = Sets::new(problem.sites.len());
+    for &[a, b] in problem.graph.strong.iter().chain(&problem.graph.weak) {
+        if partitions.iter().all(|(_, p)| p.label[a as usize] == p.label[b as usize]) {
+            sets.unite(a, b);
+        }
+    }
+    let (piece, count) = sets.labels();
+    Start::new(problem.graph, piece, count)
 }
 
 /// Merges the cells of one start, readings weighed by what the last pass found.

@@ -45,8 +45,11 @@ pub(super) fn stability(problem: &Problem, found: &Partition, cut: &Start, repli
     let mut overlap = vec![0.0; found.count];
     for (best, _, _) in &drawn {
         for (sum, b) in overlap.iter_mut().zip(best) {
-            *sum += b / replicates as f64;
+            *sum += b;
         }
+    }
+    for sum in &mut overlap {
+        *sum /= replicates.max(1) as f64;
     }
     let mut told_apart: BTreeMap<[u32; 2], (f64, usize)> = BTreeMap::new();
     for (edges, worth) in [(&problem.graph.strong, 1), (&problem.graph.weak, 0)] {
