@@ -3,6 +3,7 @@
 use super::score::{Table, eigenvalues};
 use super::sites::{Reading, Sites};
 use nalgebra::{Matrix3, SymmetricEigen};
+use rayon::prelude::*;
 use std::ops::{Add, AddAssign};
 
 /// Isotropic pseudo-readings that keep the likelihood of a few equal readings finite.
@@ -125,7 +126,7 @@ pub(super) fn gather(sites: &Sites, label: &[u32], groups: usize, weight: &[f64]
 
 /// Gathered moments, scored.
 pub(super) fn scored(moments: &[Moments], table: &Table) -> Vec<Scored> {
-    moments.iter().map(|&m| Scored::new(m, table)).collect()
+    moments.par_iter().with_min_len(64).map(|&m| Scored::new(m, table)).collect()
 }
 
 /// Bingham's distribution fitted to moments; ln density = x' m x - ln c.
@@ -170,7 +171,7 @@ pub(super) fn densities(moments: &[Moments], table: &Table) -> Vec<Density> {
 
 /// Per reading: the log of its mixed density under its own group.
 pub(super) fn own_logs(sites: &Sites, label: &[u32], densities: &[Density]) -> Vec<f64> {
-    let pairs = sites.readings.iter().zip(&sites.site);
+    let pairs = sites.readings.par_iter().zip(&sites.site);
     pairs
         .map(|(r, &site)| densities[label[site as usize] as usize * sites.structures + r.structure].log_mixed(r))
         .collect()

@@ -52,7 +52,7 @@ pub fn grow(
     progress.end();
 
     progress.begin("cells", None);
-    let size = (smallest as f64 / 2.5).round().min(CELL[0]).max(4.0).min(fair as f64).max((n as f64 / CELL[1]).round());
+    let size = (smallest as f64 / 2.5).round().clamp(4.0, CELL[0]).min(fair as f64).max((n as f64 / CELL[1]).round());
     let multiples = if n <= STARTS.0 { &STARTS.1[..] } else { &STARTS.1[..1] };
     let starts: Vec<Start> = multiples
         .par_iter()

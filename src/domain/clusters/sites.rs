@@ -3,6 +3,7 @@
 
 use super::{GrowError, Places};
 use geo::Coord;
+use rayon::prelude::*;
 
 /// Steps along the longer side of the bounding box: fine enough to move nobody (0.01 mm in 12 km), coarse enough
 /// to round away what a shift of the origin leaves in the last digits. Products of two differences fit an i64.
@@ -84,7 +85,7 @@ impl Sites {
 
     fn fill(mut self, places: &Places, snapped: &[[i64; 2]], used: &[u16]) -> Self {
         let mut row: Vec<u32> = (0..snapped.len() as u32).collect();
-        row.sort_unstable_by(|&a, &b| {
+        row.par_sort_unstable_by(|&a, &b| {
             let (a, b) = (a as usize, b as usize);
             let (v, w) = (places.axis[a].vector(), places.axis[b].vector());
             (snapped[a], places.structure[a])
