@@ -8,37 +8,9 @@ use std::collections::BinaryHeap;
 /// Rounds of moving each seed to the middle of its cell (Lloyd 1982, on the graph's distances).
 const ROUNDS: usize = 2;
 
-/// Place of a position along the Hilbert curve of order 30 over the bounding box.
-pub(super) fn hilbert(at: [i64; 2]) -> u64 {
-    const TOP: i64 = (1 << 30) - 1;
-    let [mut x, mut y] = at.map(|v| v.min(TOP));
-    let mut place = 0u64;
-    let mut half = 1i64 << 29;
-    while half > 0 {
-        let (right, upper) = (i64::from(x & half > 0), i64::from(y & half > 0));
-        place += (half * half * ((3 * right) ^ upper)) as u64;
-        if upper == 0 {
-            if right == 1 {
-                (x, y) = (TOP - x, TOP - y);
-            }
-            (x, y) = (y, x);
-        }
-        half >>= 1;
-    }
-    place
-}
-
-/// The sites in the order of the Hilbert curve.
-pub(super) fn along_curve(sites: &Sites) -> Vec<u32> {
-    let mut order: Vec<(u64, u32)> = sites.at.iter().enumerate().map(|(i, &at)| (hilbert(at), i as u32)).collect();
-    order.sort_unstable();
-    order.into_iter().map(|(_, i)| i).collect()
-}
-
-/// A cell number per site, and how many cells there are; about `size` readings each. `shift` in [0, 1) moves
-/// the seeds along the curve.
-pub(super) fn cells(sites: &Sites, graph: &Graph, curve: &[u32], size: f64, shift: f64) -> (Vec<u32>, usize) {
-    let mut seeds = seeds(sites, graph, curve, size, shift);
+/// A cell number per site, and how many cells there are; about `size` readings each.
+pub(super) fn cells(sites: &Sites, graph: &Graph, size: f64) -> (Vec<u32>, usize) {
+    let mut seeds = seeds(sites, graph, size);
     let mut cell = nearest_seed(sites, graph, &seeds);
     for _ in 0..ROUNDS {
         seeds = middles(sites, &cell, seeds.len());
@@ -48,15 +20,15 @@ pub(super) fn cells(sites: &Sites, graph: &Graph, curve: &[u32], size: f64, shif
 }
 
 /// Seeds at equal shares of the readings along the curve, in each connected component.
-fn seeds(sites: &Sites, graph: &Graph, curve: &[u32], size: f64, shift: f64) -> Vec<u32> {
+fn seeds(sites: &Sites, graph: &Graph, size: f64) -> Vec<u32> {
     let mut sets = Sets::new(sites.len());
     for &[a, b] in &graph.strong {
         sets.unite(a, b);
     }
     let (component, count) = sets.labels();
     let mut members: Vec<Vec<u32>> = vec![Vec::new(); count];
-    for &site in curve {
-        members[component[site as usize] as usize].push(site);
+    for (site, &component) in component.iter().enumerate() {
+        members[component as usize].push(site as u32);
     }
     let mut seeds = Vec::new();
     for members in members {
@@ -65,10 +37,10 @@ fn seeds(sites: &Sites, graph: &Graph, curve: &[u32], size: f64, shift: f64) -> 
         let (mut passed, mut next) = (0.0, 0.0);
         for site in members {
             passed += sites.load(site as usize) as f64;
-            if passed > (next + shift) * load as f64 / wanted {
+            if passed > (next + 0.5) * load as f64 / wanted {
                 seeds.push(site);
                 // A site with many readings may stand for several seeds.
-                while passed > (next + shift) * load as f64 / wanted {
+                while passed > (next + 0.5) * load as f64 / wanted {
                     next += 1.0;
                 }
             }

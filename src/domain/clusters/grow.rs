@@ -1,7 +1,7 @@
 //! The whole way from readings to domains.
 
 use super::barrier::Fence;
-use super::cells::{along_curve, cells};
+use super::cells::cells;
 use super::dispersion;
 use super::graph::Graph;
 use super::path::{path, runner_up};
@@ -48,7 +48,6 @@ pub fn grow(
     let (fence, used) = Fence::new(barriers, &sites)?;
     let graph = Graph::new(&sites, &fence, smallest);
     let barriers = Barriers { joined_across: graph.joined, ..used };
-    let curve = along_curve(&sites);
     progress.end();
 
     progress.begin("cells", None);
@@ -57,7 +56,7 @@ pub fn grow(
     let starts: Vec<Start> = multiples
         .par_iter()
         .map(|multiple| {
-            let (cell, count) = cells(&sites, &graph, &curve, (size * multiple).max(1.0), 0.5);
+            let (cell, count) = cells(&sites, &graph, (size * multiple).max(1.0));
             Start::new(&graph, cell, count)
         })
         .collect();
@@ -71,7 +70,6 @@ pub fn grow(
         sites: &sites,
         graph: &graph,
         table,
-        curve: &curve,
         phi: &phi,
         address: 0.5 * (n as f64 / size).max(1.0).ln(),
         least: smallest,

@@ -42,8 +42,7 @@ fn sweep(problem: &Problem, label: &mut [u32], densities: &[Density]) -> bool {
     let mut any = false;
     for _ in 0..SWEEPS {
         let mut moved = false;
-        for &site in problem.curve {
-            let site = site as usize;
+        for site in 0..sites.len() {
             if !std::mem::take(&mut waiting[site]) {
                 continue;
             }

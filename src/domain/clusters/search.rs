@@ -18,8 +18,6 @@ pub(super) struct Problem<'a> {
     pub sites: &'a Sites,
     pub graph: &'a Graph,
     pub table: &'a Table,
-    /// Sites in the order of the Hilbert curve.
-    pub curve: &'a [u32],
     /// Overdispersion per site.
     pub phi: &'a [f64],
     /// Price of one more domain.

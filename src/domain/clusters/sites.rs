@@ -4,10 +4,11 @@
 use super::{GrowError, Places};
 use geo::Coord;
 use rayon::prelude::*;
+use std::cmp::Ordering;
 
 /// Steps along the longer side of the bounding box: fine enough to move nobody (0.01 mm in 12 km), coarse enough
 /// to round away what a shift of the origin leaves in the last digits. Products of two differences fit an i64.
-const STEPS: f64 = 1_073_741_824.0;
+const STEPS: f64 = 536_870_912.0;
 
 /// One reading: its structure (renumbered from 0) and the products xx, yy, zz, xy, xz, yz of its axis.
 #[derive(Debug, Clone, Copy)]
@@ -16,7 +17,7 @@ pub(super) struct Reading {
     pub products: [f64; 6],
 }
 
-/// The distinct positions, sorted by x then y, each with its readings, sorted by value.
+/// The distinct positions in the order of a Hilbert curve, so that neighbours are near in memory, each with its readings, sorted by value.
 #[derive(Debug)]
 pub(super) struct Sites {
     pub at: Vec<[i64; 2]>,
@@ -84,16 +85,17 @@ impl Sites {
     }
 
     fn fill(mut self, places: &Places, snapped: &[[i64; 2]], used: &[u16]) -> Self {
-        let mut row: Vec<u32> = (0..snapped.len() as u32).collect();
-        row.par_sort_unstable_by(|&a, &b| {
-            let (a, b) = (a as usize, b as usize);
-            let (v, w) = (places.axis[a].vector(), places.axis[b].vector());
-            (snapped[a], places.structure[a])
-                .cmp(&(snapped[b], places.structure[b]))
-                .then_with(|| v.x.total_cmp(&w.x))
-                .then_with(|| v.y.total_cmp(&w.y))
-                .then_with(|| v.z.total_cmp(&w.z))
+        let mut sorted: Vec<(u64, u32)> =
+            snapped.par_iter().enumerate().map(|(row, &at)| (hilbert(at), row as u32)).collect();
+        sorted.par_sort_unstable_by(|&(p, a), &(q, b)| {
+            p.cmp(&q).then_with(|| {
+                let (a, b) = (a as usize, b as usize);
+                let (v, w) = (places.axis[a].vector(), places.axis[b].vector());
+                let axes = v.iter().zip(w.iter()).map(|(x, y)| x.total_cmp(y)).find(|o| o.is_ne());
+                places.structure[a].cmp(&places.structure[b]).then(axes.unwrap_or(Ordering::Equal))
+            })
         });
+        let row: Vec<u32> = sorted.into_iter().map(|(_, row)| row).collect();
         for &r in &row {
             let r = r as usize;
             if self.at.last() != Some(&snapped[r]) {
@@ -136,4 +138,24 @@ impl Sites {
         let (a, b) = (self.coord(a), self.coord(b));
         (a.x - b.x).hypot(a.y - b.y)
     }
+}
+
+/// Place of a position along the Hilbert curve of order 30 over the bounding box.
+fn hilbert(at: [i64; 2]) -> u64 {
+    const TOP: i64 = (1 << 30) - 1;
+    let [mut x, mut y] = at.map(|v| v.min(TOP));
+    let mut place = 0u64;
+    let mut half = 1i64 << 29;
+    while half > 0 {
+        let (right, upper) = (i64::from(x & half > 0), i64::from(y & half > 0));
+        place += (half * half * ((3 * right) ^ upper)) as u64;
+        if upper == 0 {
+            if right == 1 {
+                (x, y) = (TOP - x, TOP - y);
+            }
+            (x, y) = (y, x);
+        }
+        half >>= 1;
+    }
+    place
 }
