@@ -19,7 +19,7 @@ const SHARE: usize = 200;
 /// Readings in a cell, at most, below a million readings; and the divisor beyond.
 const CELL: [f64; 2] = [60.0, 20_000.0];
 /// Sizes of cells tried up to this many readings, as multiples of the first; beyond, the first alone.
-const STARTS: (usize, [f64; 3]) = (20_000, [1.0, 2.0, 0.5]);
+const STARTS: (usize, [f64; 6]) = (20_000, [1.0, 2.0, 0.5, 1.4, 0.7, 2.8]);
 
 /// Grows domains.
 ///
@@ -81,7 +81,7 @@ pub fn grow(
     progress.begin("stability", Some(options.replicates as u64));
     let cut = starts[0].cut(&problem, &found);
     let path = path(&problem, &found, &cut);
-    let stable = stability(&problem, &found, &cut, options.replicates, options.seed);
+    let stable = stability(&problem, &found, &cut, options.replicates, options.seed, progress);
     progress.end();
     Ok(report(&problem, found, stable, path, starts[0].links.len(), options, barriers))
 }

@@ -3,6 +3,7 @@
 use super::agglomerate::{Regions, Until};
 use super::evidence::scored;
 use super::search::{Partition, Problem, Start};
+use crate::notice::Progress;
 use rand::{RngExt, SeedableRng};
 use rand_chacha::ChaCha8Rng;
 use rayon::prelude::*;
@@ -25,7 +26,14 @@ pub(super) struct Stability {
 
 /// Merges cells again under exponential weights of the readings (the Bayesian bootstrap, Rubin 1981). The cells
 /// are `cut` along the boundaries found, so that none straddles one.
-pub(super) fn stability(problem: &Problem, found: &Partition, cut: &Start, replicates: usize, seed: u64) -> Stability {
+pub(super) fn stability(
+    problem: &Problem,
+    found: &Partition,
+    cut: &Start,
+    replicates: usize,
+    seed: u64,
+    progress: &dyn Progress,
+) -> Stability {
     let until = problem.wanted.map_or(Until::Least, Until::Count);
     let phi: Vec<f64> = problem.phi.iter().map(|p| p * NOISE).collect();
     let drawn: Vec<(Vec<f64>, Vec<u32>, usize)> = (0..replicates)
@@ -39,6 +47,7 @@ pub(super) fn stability(problem: &Problem, found: &Partition, cut: &Start, repli
                 Regions::new(problem.table, problem.sites.structures, terms, cut.links.clone(), problem.address);
             let (merged, groups, _) = regions.agglomerate(until);
             let (best, most) = overlaps(problem, found, &cut.cell, &merged, groups);
+            progress.advance(1);
             (best, most, groups)
         })
         .collect();
