@@ -6,7 +6,7 @@ use geo::Coord;
 use rayon::prelude::*;
 use std::cmp::Ordering;
 
-/// Steps along the longer side of the bounding box: fine enough to move nobody (0.01 mm in 12 km), coarse enough
+/// Steps along the longer side of the bounding box: fine enough to move nobody (0.02 mm in 12 km), coarse enough
 /// to round away what a shift of the origin leaves in the last digits. Products of two differences fit an i64.
 const STEPS: f64 = 536_870_912.0;
 
