@@ -2,6 +2,7 @@
 //!
 //! Invariant: a [`DomainId`] is issued only here, 1, 2, 3 … in the order of the domains.
 
+pub mod clusters;
 mod locate;
 mod outline;
 mod polygons;
