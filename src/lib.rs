@@ -1,8 +1,8 @@
 //! From a stack of structural readings to domains, fabric statistics and map layers that draw right.
 //!
 //! The floors, lowest first; a folder uses only floors below its own (`tests/architecture.rs` keeps this true):
-//! 0 [`notice`], [`orientation`] · 1 [`table`], [`station`], [`crs`], [`fabric`] · 2 [`domain`], [`mod@format`] ·
-//! 3 [`input`], [`symbol`] · 4 [`layer`], [`style`] · 6 [`job`] · 7 [`cli`].
+//! 0 [`notice`], [`orientation`] · 1 [`table`] · 2 [`station`] · 3 [`crs`], [`fabric`] · 4 [`domain`], [`mod@format`] ·
+//! 5 [`input`], [`symbol`] · 6 [`layer`], [`style`] · 7 [`job`] · 8 [`cli`].
 
 pub mod cli;
 pub mod crs;

@@ -106,10 +106,11 @@ fn in_table(path: &str, table: &toml::Table) -> Option<UnknownKey> {
     None
 }
 
-/// Keys less like the typed one than this are no help.
+/// Words less like the typed one than this are no help.
 const LEAST_LIKENESS: f64 = 0.7;
 
-fn nearest(key: &str, known: &[&str]) -> Option<String> {
+/// The known word most like the typed one, where one is near.
+pub(super) fn nearest(key: &str, known: &[&str]) -> Option<String> {
     let likeness = |k: &&str| strsim::jaro_winkler(k, &key.to_lowercase());
     known
         .iter()

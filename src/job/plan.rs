@@ -1,6 +1,7 @@
 //! The plan: an area file checked against what the job needs, with every path resolved.
 
 use super::area_file::{AreaFile, ColumnOrValue, NumberOrText, StationsSection, StructureName};
+use super::area_keys::nearest;
 use super::fabric_plan::FabricPlan;
 use super::one_or_many::OneOrMany;
 use super::paths::Located;
@@ -363,11 +364,6 @@ impl Checker<'_> {
 
 /// "one of a, b, c; did you mean b?"
 fn choices(value: &str, known: &[&str]) -> String {
-    let nearest = known
-        .iter()
-        .map(|k| (strsim::jaro_winkler(k, value), k))
-        .filter(|(likeness, _)| *likeness > 0.7)
-        .max_by(|a, b| a.0.total_cmp(&b.0));
-    let meant = nearest.map(|(_, k)| format!("; did you mean \"{k}\"?")).unwrap_or_default();
+    let meant = nearest(value, known).map(|k| format!("; did you mean \"{k}\"?")).unwrap_or_default();
     format!("must be one of {}{meant}", known.join(", "))
 }
